@@ -1,0 +1,37 @@
+// The liquids that give heat to a machine and take it away.
+//
+// Pure. h and s at the stream's pressure; only differences along one stream mean anything.
+#pragma once
+
+#include "thermo/result.h"
+
+#include <variant>
+
+namespace lostwork {
+
+// Water by IAPWS-95 at 300 kPa (a pressure common in closed loops; 100 kPa more changes h by 0.1
+// kJ/kg and differences of h by less than 1e-4 of themselves).
+struct WaterStream {};
+
+// A liquid of constant volumetric heat capacity, for sources that state one and for brines until
+// they have their own equation.
+struct ConstantStream {
+  double rho_cp_JmK = 4.18e6;  // J/(m3 K)
+  double rho_kgm3 = 1000.0;    // turns a mass flow into a volume flow, nothing else
+};
+
+using StreamFluid = std::variant<WaterStream, ConstantStream>;
+
+struct StreamState {
+  double rho_kgm3;
+  double h_Jkg;
+  double s_JkgK;
+  double cp_JkgK;         // dh/dT; ds/dT = cp/T
+  double expansion_beta;  // -(1/rho) drho/dT, 1/K
+};
+
+// Refuses: implausible (not finite), outside_fluid (water outside 0.01..150 degC: it freezes or
+// boils).
+[[nodiscard]] Result<StreamState> stream_state(const StreamFluid& fluid, double T_K);
+
+}  // namespace lostwork
