@@ -1,0 +1,323 @@
+#include "config/plant_file.h"
+
+#include "config/plant_keys.h"
+#include "config/toml_reader.h"
+
+namespace lostwork {
+namespace {
+
+constexpr std::string_view accuracy_form =
+    "one or several of { class = \"Pt100 A\" }, { limit = X }, { percent_of_reading = X }, "
+    "{ percent_of_span = X, span = [a, b] }, { u = X } with X >= 0";
+
+std::optional<std::array<double, 2>> two_numbers(const toml::node& node) {
+  const toml::array* array = node.as_array();
+  if (array == nullptr || array->size() != 2 || !(*array)[0].is_number() ||
+      !(*array)[1].is_number()) {
+    return std::nullopt;
+  }
+  const std::array out{*(*array)[0].value<double>(), *(*array)[1].value<double>()};
+  if (!std::isfinite(out[0]) || !std::isfinite(out[1]) || !(out[0] < out[1])) {
+    return std::nullopt;
+  }
+  return out;
+}
+
+bool take_accuracy_part(const std::string& name, const toml::node& node, AccuracyOptions& out) {
+  if (name == "class") {
+    out.sensor_class = node.value<std::string>();
+    return out.sensor_class.has_value();
+  }
+  if (name == "span") {
+    out.span = two_numbers(node);
+    return out.span.has_value();
+  }
+  const auto number = node.is_number() ? node.value<double>() : std::nullopt;
+  if (!number || !(*number >= 0.0) || !std::isfinite(*number)) {
+    return false;
+  }
+  if (name == "limit") {
+    out.limit = number;
+  } else if (name == "percent_of_reading") {
+    out.percent_of_reading = number;
+  } else if (name == "percent_of_span") {
+    out.percent_of_span = number;
+  } else if (name == "u") {
+    out.u = number;
+  } else {
+    return false;
+  }
+  return true;
+}
+
+std::optional<AccuracyOptions> one_accuracy(const toml::table& table) {
+  AccuracyOptions out;
+  for (const auto& [name, node] : table) {
+    if (!take_accuracy_part(std::string{name.str()}, node, out)) {
+      return std::nullopt;
+    }
+  }
+  const bool span_fits = out.span.has_value() == out.percent_of_span.has_value();
+  return table.empty() || !span_fits ? std::nullopt : std::optional{out};
+}
+
+std::vector<AccuracyOptions> take_accuracy(const TomlPlace& place, std::string_view key) {
+  const toml::node* node = place.table.get(key);
+  if (node == nullptr) {
+    return {};
+  }
+  std::vector<AccuracyOptions> out;
+  const auto add = [&out](const toml::node& part) {
+    const auto one = part.is_table() ? one_accuracy(*part.as_table()) : std::nullopt;
+    if (one) {
+      out.push_back(*one);
+    }
+    return one.has_value();
+  };
+  bool good = true;
+  if (const toml::array* array = node->as_array()) {
+    for (const toml::node& part : *array) {
+      good = add(part) && good;
+    }
+    good = good && !array->empty();
+  } else {
+    good = add(*node);
+  }
+  if (!good) {
+    place.refuse(*node, key, std::string{accuracy_form});
+  }
+  return out;
+}
+
+StreamOptions take_stream(const TomlPlace& place, std::string_view key) {
+  StreamOptions out;
+  const toml::node* node = place.table.get(key);
+  if (node == nullptr) {
+    return out;
+  }
+  static constexpr std::array<std::string_view, 1> liquids{"water"};
+  static constexpr std::array stream_keys{
+      Key<StreamOptions>{       "fluid",        &StreamOptions::fluid,               "the liquid",false,   0,   0, liquids},
+      Key<StreamOptions>{"rho_cp_J_m3K", &StreamOptions::rho_cp_J_m3K, "volumetric heat capacity",
+                         false, 1e5, 1e7        },
+  };
+  if (const toml::table* table = node->as_table()) {
+    const TomlPlace inner{*table, place.where + '.' + std::string{key}, place.problems};
+    return read_by_keys<StreamOptions>(inner, stream_keys);
+  }
+  place.refuse(*node, key, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }");
+  return out;
+}
+
+CasingLossOptions take_casing_loss(const TomlPlace& place) {
+  static constexpr std::array casing_keys{
+      Key<CasingLossOptions>{"fraction", &CasingLossOptions::fraction,    "share of the power", true,
+                             0,0.5                            },
+      Key<CasingLossOptions>{   "limit",    &CasingLossOptions::limit, "how far off it may be", true, 0,
+                             0.5},
+  };
+  const toml::node* node = place.table.get("casing_loss");
+  if (node == nullptr) {
+    return {};
+  }
+  if (const toml::table* table = node->as_table()) {
+    const TomlPlace inner{*table, place.where + ".casing_loss", place.problems};
+    return read_by_keys<CasingLossOptions>(inner, casing_keys);
+  }
+  place.refuse(*node, "casing_loss", "{ fraction = 0.05, limit = 0.05 }");
+  return {};
+}
+
+std::vector<std::int64_t> take_sentinels(const TomlPlace& place) {
+  const toml::node* node = place.table.get("sentinels");
+  if (node == nullptr) {
+    return {};
+  }
+  std::vector<std::int64_t> out;
+  if (const toml::array* array = node->as_array()) {
+    for (const toml::node& part : *array) {
+      const toml::value<std::int64_t>* number = part.as_integer();
+      if (number != nullptr && number->get() >= 0 && number->get() <= 0xFFFFFFFFLL) {
+        out.push_back(number->get());
+      }
+    }
+    if (out.size() == array->size()) {
+      return out;
+    }
+  }
+  place.refuse(*node, "sentinels",
+               "whole numbers from 0 to 0xFFFFFFFF in brackets, as in [0x8000]");
+  return {};
+}
+
+std::optional<std::chrono::sys_seconds> take_date(const toml::node* node) {
+  if (node == nullptr || !node->is_date()) {
+    return std::nullopt;
+  }
+  const toml::date d = node->as_date()->get();
+  const std::chrono::year_month_day day{std::chrono::year{d.year}, std::chrono::month{d.month},
+                                        std::chrono::day{d.day}};
+  return day.ok() ? std::optional<std::chrono::sys_seconds>{std::chrono::sys_days{day}}
+                  : std::nullopt;
+}
+
+std::vector<CorrectionOptions> take_corrections(const TomlPlace& place) {
+  const toml::node* node = place.table.get("corrections");
+  if (node == nullptr) {
+    return {};
+  }
+  std::vector<CorrectionOptions> out;
+  if (const toml::array* array = node->as_array()) {
+    for (const toml::node& part : *array) {
+      const toml::table* table = part.as_table();
+      const auto from = table != nullptr ? take_date(table->get("from")) : std::nullopt;
+      const auto add = from && table->size() == 2 && (*table)["add"].is_number()
+                           ? (*table)["add"].value<double>()
+                           : std::nullopt;
+      if (add && std::isfinite(*add) && (out.empty() || out.back().from < *from)) {
+        out.push_back({.from = *from, .add = *add});
+      }
+    }
+    if (out.size() == array->size()) {
+      return out;
+    }
+  }
+  place.refuse(*node, "corrections",
+               "[{ from = 2026-03-01, add = 0.12 }, ...] in the order of their dates");
+  return {};
+}
+
+template <class S>
+S read_one(const TomlPlace& place, std::span<const Key<S>> keys) {
+  S out = read_by_keys<S>(place, keys);
+  if constexpr (requires { out.line; }) {
+    out.line = place.table.source().begin.line;
+  }
+  if constexpr (std::is_same_v<S, MachineOptions>) {
+    out.casing_loss = take_casing_loss(place);
+    out.cold_stream = take_stream(place, "cold_stream");
+    out.hot_stream = take_stream(place, "hot_stream");
+  } else if constexpr (std::is_same_v<S, PairOptions>) {
+    out.difference = take_accuracy(place, "difference");
+  } else if constexpr (std::is_same_v<S, PointOptions>) {
+    out.accuracy = take_accuracy(place, "accuracy");
+    out.sentinels = take_sentinels(place);
+    out.corrections = take_corrections(place);
+    if (const toml::node* node = place.table.get("range")) {
+      out.range = two_numbers(*node);
+      if (!out.range) {
+        place.refuse(*node, "range", "[lowest, highest], two numbers in the point's unit");
+      }
+    }
+  }
+  return out;
+}
+
+class FileReader {
+ public:
+  FileReader(const toml::table& root, Problems& problems) : root_{root}, problems_{problems} {}
+
+  template <class S, std::size_t n>
+  S table(std::string_view name, const std::array<Key<S>, n>& keys, bool required) {
+    known_.push_back(name);
+    const toml::node* node = root_.get(name);
+    if (node == nullptr) {
+      if (required) {
+        problems_.push_back({.line = 0,
+                             .key = '[' + std::string{name} + ']',
+                             .found = {},
+                             .allowed = "is required"});
+      }
+      return {};
+    }
+    if (const toml::table* found = node->as_table()) {
+      return read_one<S>({*found, std::string{name}, problems_}, keys);
+    }
+    refuse(*node, name, '[' + std::string{name} + "] with its keys below it");
+    return {};
+  }
+
+  template <class S, std::size_t n>
+  std::vector<S> tables(std::string_view name, const std::array<Key<S>, n>& keys) {
+    known_.push_back(name);
+    std::vector<S> out;
+    const toml::node* node = root_.get(name);
+    if (node == nullptr) {
+      return out;
+    }
+    const toml::array* array = node->as_array();
+    if (array == nullptr || !array->is_homogeneous<toml::table>()) {
+      refuse(*node, name, "[[" + std::string{name} + "]] with its keys below it, once for each");
+      return out;
+    }
+    for (const toml::node& part : *array) {
+      const std::string where = std::string{name} + '[' + std::to_string(out.size() + 1) + ']';
+      out.push_back(read_one<S>({*part.as_table(), where, problems_}, keys));
+    }
+    return out;
+  }
+
+  void refuse_unknown() {
+    for (const auto& [name, node] : root_) {
+      if (std::find(known_.begin(), known_.end(), name.str()) == known_.end()) {
+        std::string allowed = "no such table; known:";
+        for (const std::string_view known : known_) {
+          allowed += ' ' + std::string{known};
+        }
+        refuse(node, name.str(), allowed);
+      }
+    }
+  }
+
+ private:
+  void refuse(const toml::node& node, std::string_view key, std::string allowed) {
+    problems_.push_back({.line = line_of(node),
+                         .key = std::string{key},
+                         .found = found_text(node),
+                         .allowed = std::move(allowed)});
+  }
+
+  const toml::table& root_;
+  Problems& problems_;
+  std::vector<std::string_view> known_;
+};
+
+PlantFile read_tables(const toml::table& root, Problems& problems) {
+  FileReader reader{root, problems};
+  PlantFile file;
+  file.site = reader.table("site", keys::site, true);
+  file.storage = reader.table("storage", keys::storage, false);
+  file.web = reader.table("web", keys::web, false);
+  file.tariff = reader.table("tariff", keys::tariff, false);
+  file.buses = reader.tables("bus", keys::bus);
+  file.devices = reader.tables("device", keys::device);
+  file.machines = reader.tables("machine", keys::machine);
+  file.pairs = reader.tables("pair", keys::pair);
+  file.points = reader.tables("point", keys::point);
+  file.safety_limits = reader.tables("safety_limit", keys::safety_limit);
+  reader.refuse_unknown();
+  return file;
+}
+
+}  // namespace
+
+tl::expected<PlantFile, Problems> read_plant_file(std::string_view text, std::string_view name) {
+  Problems problems;
+  try {
+    const toml::table root = toml::parse(text, name);
+    PlantFile file = read_tables(root, problems);
+    if (problems.empty()) {
+      return file;
+    }
+  } catch (const toml::parse_error& error) {
+    problems.push_back({.line = error.source().begin.line,
+                        .key = "TOML",
+                        .found = {},
+                        .allowed = std::string{error.description()}});
+  }
+  std::stable_sort(problems.begin(), problems.end(),
+                   [](const Problem& a, const Problem& b) { return a.line < b.line; });
+  return tl::unexpected{problems};
+}
+
+}  // namespace lostwork

@@ -1,0 +1,89 @@
+// Reads tables of a TOML file by their key tables, and remembers every problem.
+#pragma once
+
+#include "config/key_table.h"
+#include "config/problem.h"
+
+#include <algorithm>
+#include <cmath>
+#include <string>
+#include <string_view>
+#include <toml++/toml.h>
+
+namespace lostwork {
+
+[[nodiscard]] std::string found_text(const toml::node& node);
+[[nodiscard]] std::string allowed_number(double min, double max, bool whole);
+[[nodiscard]] std::string allowed_choices(std::span<const std::string_view> choices);
+[[nodiscard]] std::uint32_t line_of(const toml::node& node);
+
+// One table of the file, with its place for messages ("machine[1]").
+struct TomlPlace {
+  const toml::table& table;
+  std::string where;
+  Problems& problems;
+
+  void refuse(const toml::node& node, std::string_view key, std::string allowed) const;
+  void missing(std::string_view key, std::string allowed) const;
+};
+
+// Each fills `out` or notes a problem.
+void take(const TomlPlace& place, std::string_view key, const toml::node& node, std::string& out,
+          std::span<const std::string_view> choices);
+void take_number(const TomlPlace& place, std::string_view key, const toml::node& node, double& out,
+                 double min, double max);
+void take_whole(const TomlPlace& place, std::string_view key, const toml::node& node,
+                std::int64_t& out, double min, double max);
+void take(const TomlPlace& place, std::string_view key, const toml::node& node, bool& out);
+
+template <class S>
+void take_member(const TomlPlace& place, const Key<S>& key, const toml::node& node, S& out) {
+  std::visit(
+      [&place, &key, &node, &out](auto member) {
+        using M = decltype(member);
+        if constexpr (std::is_same_v<M, std::string S::*>) {
+          take(place, key.name, node, out.*member, key.choices);
+        } else if constexpr (std::is_same_v<M, std::optional<std::string> S::*>) {
+          take(place, key.name, node, (out.*member).emplace(), key.choices);
+        } else if constexpr (std::is_same_v<M, double S::*>) {
+          take_number(place, key.name, node, out.*member, key.min, key.max);
+        } else if constexpr (std::is_same_v<M, std::optional<double> S::*>) {
+          take_number(place, key.name, node, (out.*member).emplace(), key.min, key.max);
+        } else if constexpr (std::is_same_v<M, std::int64_t S::*>) {
+          take_whole(place, key.name, node, out.*member, key.min, key.max);
+        } else if constexpr (std::is_same_v<M, std::optional<std::int64_t> S::*>) {
+          take_whole(place, key.name, node, (out.*member).emplace(), key.min, key.max);
+        } else if constexpr (std::is_same_v<M, bool S::*>) {
+          take(place, key.name, node, out.*member);
+        }
+      },
+      key.member);
+}
+
+// Fills S from its table: unknown keys, wrong types, values out of range and missing required keys
+// are problems.
+template <class S>
+[[nodiscard]] S read_by_keys(const TomlPlace& place, std::span<const Key<S>> keys) {
+  S out{};
+  for (const auto& [name, node] : place.table) {
+    const auto key = std::find_if(keys.begin(), keys.end(),
+                                  [&name](const Key<S>& k) { return k.name == name.str(); });
+    if (key == keys.end()) {
+      std::string known;
+      for (const Key<S>& k : keys) {
+        known += (known.empty() ? "" : ", ") + std::string{k.name};
+      }
+      place.refuse(node, name.str(), "no such key; known here: " + known);
+      continue;
+    }
+    take_member(place, *key, node, out);
+  }
+  for (const Key<S>& key : keys) {
+    if (key.required && !place.table.contains(key.name)) {
+      place.missing(key.name, std::string{key.meaning});
+    }
+  }
+  return out;
+}
+
+}  // namespace lostwork
