@@ -1,0 +1,45 @@
+// Puts the readings of several buses together to the scans of one machine. Pure.
+#pragma once
+
+#include "sensors/poller.h"
+#include "sensors/wiring.h"
+#include "thermo/reading.h"
+
+#include <cstddef>
+#include <span>
+#include <string_view>
+#include <vector>
+
+namespace lostwork {
+
+class ScanAssembler {
+ public:
+  ScanAssembler(const Wiring& wiring, std::string_view machine);
+
+  // Readings of other machines' points are passed over. Later ones replace earlier ones.
+  void take(std::span<const PointReading> readings);
+
+  // Whether every point that is wired to a bus has a reading that no scan has used yet.
+  [[nodiscard]] bool complete() const;
+
+  // The scan at `time`: readings in the order of the machine's points. Constant points are good at
+  // `time`. A reading enters one scan only and must not be older than a period: instead of a value
+  // held from before there is quality timeout, and stale once the last one is older than three
+  // periods.
+  [[nodiscard]] Scan scan(Instant time);
+
+ private:
+  struct Slot {
+    std::size_t point;  // index into Wiring::points
+    bool wired;
+    bool fresh = false;
+    Reading last;
+    PointSpec spec;
+  };
+
+  double altitude_m_;
+  Span period_;
+  std::vector<Slot> slots_;
+};
+
+}  // namespace lostwork
