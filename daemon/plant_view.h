@@ -2,6 +2,7 @@
 // on the same thread. Plain values; nothing in here points into the loop.
 #pragma once
 
+#include "daemon/alarm_state.h"
 #include "thermo/cycle/assessment.h"
 #include "thermo/cycle/machine_model.h"
 #include "thermo/measured.h"
@@ -26,15 +27,6 @@ struct PointView {
   double per_SI = 1.0;  // value in unit = SI value * per_SI + offset
   double offset = 0.0;
   Reading reading;  // SI
-};
-
-// Stored in journals: the numbers are never changed.
-enum class AlarmState : std::uint8_t {
-  normal = 0,
-  active_unacknowledged = 1,
-  active_acknowledged = 2,
-  returned_unacknowledged = 3,
-  count
 };
 
 struct AlarmView {
