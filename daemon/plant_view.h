@@ -2,7 +2,7 @@
 // on the same thread. Plain values; nothing in here points into the loop.
 #pragma once
 
-#include "daemon/alarm_state.h"
+#include "daemon/alarm.h"
 #include "thermo/cycle/assessment.h"
 #include "thermo/cycle/machine_model.h"
 #include "thermo/measured.h"
@@ -30,16 +30,8 @@ struct PointView {
 };
 
 struct AlarmView {
-  std::string id;       // [A-Za-z0-9._-], 1 to 64 characters; names it in the API
   std::string machine;  // MachineView::id; empty: of the whole plant
-  int priority = 3;     // 1 danger, 2 protects the machine, 3 costs energy, 4 for diagnosis
-  AlarmState state = AlarmState::normal;
-  bool safety_relevant = false;
-  Instant since{};                      // became active
-  std::optional<Instant> returned;      // the condition ended
-  std::optional<Instant> acknowledged;  // somebody said "seen"
-  std::string text;                     // whole sentences, shown as they are
-  std::vector<std::string> evidence;    // one line each, with figures
+  Alarm alarm;          // its id names it in the API: [A-Za-z0-9._-], at most 200 characters
 };
 
 // One possible cause of a finding, most likely first.
@@ -57,7 +49,7 @@ enum class FindingKind : std::uint8_t {
 };
 
 struct FindingView {
-  std::string id;  // same characters as AlarmView::id
+  std::string id;  // same characters as an alarm's id
   FindingKind kind = FindingKind::other;
   std::string headline;                   // one sentence
   std::optional<Instant> since;           // most likely onset

@@ -18,7 +18,9 @@
 #include <string_view>
 #include <vector>
 
-#include <boost/asio/io_context.hpp>
+namespace boost::asio {
+class io_context;
+}  // namespace boost::asio
 
 namespace lostwork {
 
