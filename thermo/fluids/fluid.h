@@ -1,0 +1,99 @@
+// What the program knows of one fluid: the published fundamental equation, its limits and names.
+//
+// Plain constants, filled by name in one file a fluid, with the rows of the paper's tables as
+// printed. The equation is a(rho, T)/(R T) = alpha0(tau, delta) + alphar(tau, delta) with tau =
+// reducing T / T and delta = rho / reducing rho. The spans point at constants of static storage.
+#pragma once
+
+#include "thermo/fluids/residual.h"
+
+#include <span>
+#include <string_view>
+
+namespace lostwork {
+
+// n (tau^t) delta^d exp(-eta (delta - epsilon)^2 - beta (tau - gamma)^2)
+struct GaussianTerm {
+  double n;
+  double t;
+  int d;
+  double eta;
+  double beta;
+  double gamma;
+  double epsilon;
+};
+
+// n D^b delta exp(-c_ (delta - 1)^2 - d_ (tau - 1)^2), where D = theta^2 + b_ ((delta - 1)^2)^a and
+// theta = (1 - tau) + a_ ((delta - 1)^2)^(1 / (2 beta)). The papers print a_ to d_ as A to D.
+struct NonAnalyticTerm {
+  double n;
+  double a;
+  double b;
+  double beta;
+  double upper_a;
+  double upper_b;
+  double upper_c;
+  double upper_d;
+};
+
+struct IdealPower {  // n tau^t
+  double n;
+  double t;
+};
+
+struct PlanckEinstein {  // n ln(1 - exp(-theta tau))
+  double n;
+  double theta;
+};
+
+// alpha0 = ln(delta) + a1 + a2 tau + a_log_tau ln(tau) + the sums below. a1 and a2 carry the
+// reference state.
+struct IdealPart {
+  double a1;
+  double a2;
+  double a_log_tau;
+  std::span<const IdealPower> powers;
+  std::span<const PlanckEinstein> planck_einstein;
+};
+
+// A first guess on the saturation line, nothing else: every value is refined by the equation.
+struct Ancillary {
+  enum class Form : unsigned char {
+    exp_tau_sum,  // y_scale exp(T_scale / T sum)
+    exp_sum,      // y_scale exp(sum)
+    one_plus_sum  // y_scale (1 + sum)
+  };
+  Form form;
+  double y_scale_SI;                 // Pa, or kg/m3
+  double scale_T_K;                  // sum = sum of n theta^t, theta = 1 - T / scale_T_K
+  std::span<const IdealPower> rows;  // n, t
+};
+
+struct Fluid {
+  std::string_view name;          // as on the command line: "R134a"
+  std::string_view second_name;   // also accepted; empty if none
+  std::string_view composition;   // for people: the substance, or mass fractions
+  std::string_view safety_class;  // for people, with its source; never a safety setting
+  std::string_view source;        // publication of the equation
+  std::string_view reference_state;
+  double molar_mass_kgmol;
+  double gas_constant_JkgK;  // as the paper's own equation uses it
+  double reducing_T_K;
+  double reducing_rho_kgm3;
+  double critical_T_K;  // as published
+  double critical_p_Pa;
+  double critical_rho_kgm3;  // where the equation's own isotherm is flat
+  double min_T_K;            // limits of the equation as published
+  double max_T_K;
+  double max_p_Pa;
+  double densest_kgm3;  // above any density within the limits: only bounds the search
+  IdealPart ideal;
+  PowerTerms residual;
+  std::span<const GaussianTerm> gaussian;
+  std::span<const NonAnalyticTerm> non_analytic;
+  Ancillary saturation_pressure;   // good to 1 % everywhere below the critical point
+  Ancillary saturated_liquid_rho;  // good to 5 %
+  Ancillary saturated_vapour_rho;  // good to 5 %
+};
+
+}  // namespace lostwork

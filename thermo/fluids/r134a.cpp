@@ -1,0 +1,112 @@
+// R-134a, 1,1,1,2-tetrafluoroethane.
+//
+// Source: R. Tillner-Roth, H. D. Baehr, J. Phys. Chem. Ref. Data 23 (1994) 657-729,
+// doi:10.1063/1.555958.
+#include "thermo/fluids/fluids.h"
+
+#include <array>
+
+namespace lostwork {
+namespace {
+
+// Columns and order as printed in the table of the residual part.
+constexpr auto residual = std::to_array<HelmholtzTerm>({
+  // n, t, d, l
+    {   0.05586817, -0.5,  2, 0},
+    {     0.498223,  0.0,  1, 0},
+    {   0.02458698,  0.0,  3, 0},
+    { 0.0008570145,  0.0,  6, 0},
+    { 0.0004788584,  1.5,  6, 0},
+    {    -1.800808,  1.5,  1, 0},
+    {    0.2671641,  2.0,  1, 0},
+    {  -0.04781652,  2.0,  2, 0},
+    {   0.01423987,  1.0,  5, 1},
+    {    0.3324062,  3.0,  2, 1},
+    { -0.007485907,  5.0,  2, 1},
+    { 0.0001017263,  1.0,  4, 2},
+    {   -0.5184567,  5.0,  1, 2},
+    {  -0.08692288,  5.0,  4, 2},
+    {    0.2057144,  6.0,  1, 2},
+    { -0.005000457, 10.0,  2, 2},
+    { 0.0004603262, 10.0,  4, 2},
+    { -0.003497836, 10.0,  1, 3},
+    {  0.006995038, 18.0,  5, 3},
+    {  -0.01452184, 22.0,  3, 3},
+    {-0.0001285458, 50.0, 10, 4},
+});
+
+constexpr auto ideal = std::to_array<IdealPower>({
+  // n, t
+    {-9.723916,  -0.5},
+    { -3.92717, -0.75},
+});
+
+// First guesses only: fitted to this equation by CoolProp, an open-source library (MIT licence);
+// no publication.
+constexpr auto saturation_pressure = std::to_array<IdealPower>({
+    {0.43314783,  0.845},
+    {-9.0903026,   0.99},
+    { 2.1476074,   1.14},
+    { -1.557687,  2.651},
+    {-3.5020329,  4.507},
+    { 14.958442, 17.235},
+});
+constexpr auto liquid_rho = std::to_array<IdealPower>({
+    { 18.772732, 0.673},
+    {-51.499395, 0.994},
+    { 40.793536, 1.257},
+    {  -1481.65, 5.783},
+    { 1600.5344, 5.943},
+    {-67338.524, 19.94},
+});
+constexpr auto vapour_rho = std::to_array<IdealPower>({
+    {-5.1473862,  0.476},
+    { 5.3461804,  0.966},
+    {-7.6110153,  1.321},
+    {-28.854364,  8.491},
+    {-9.0793061, 13.463},
+    {      64.0, 13.463},
+});
+
+constexpr double critical_T_K = 374.21;  // as published; the guesses are scaled by it
+constexpr double critical_p_Pa = 4059280.0;
+constexpr double critical_rho_kgm3 = 511.9;
+
+}  // namespace
+
+constinit const Fluid r134a{
+    .name = "R134a",
+    .second_name = "R-134a",
+    .composition = "1,1,1,2-tetrafluoroethane CF3CH2F 100 %",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .source = "Tillner-Roth and Baehr 1994, doi:10.1063/1.555958",
+    .reference_state = "IIR",
+    .molar_mass_kgmol = 0.102032,
+    .gas_constant_JkgK = 8.314471 / 0.102032,
+    .reducing_T_K = 374.18,
+    .reducing_rho_kgm3 = 508.0,
+    .critical_T_K = 374.2119665849513,
+    .critical_p_Pa = 4059276.3737910655,
+    .critical_rho_kgm3 = 511.9451132818318,
+    .min_T_K = 169.85,
+    .max_T_K = 455.0,
+    .max_p_Pa = 70e6,
+    .densest_kgm3 = 1900.0,
+ // a1 and a2 as printed (-1.019535, 9.047135), carried to the digits that give the IIR state.
+    .ideal = {    .a1 = -1.0195345465006602,
+              .a2 = 9.04713537629684,
+              .a_log_tau = -1.629789,
+              .powers = ideal,
+              .planck_einstein = {}},
+    .residual = PowerTerms{                     residual     },
+     .gaussian = { },
+ .non_analytic = {                      },
+    .saturation_pressure = { Ancillary::Form::exp_tau_sum,        critical_p_Pa, critical_T_K,
+              saturation_pressure     },
+    .saturated_liquid_rho = {Ancillary::Form::one_plus_sum,    critical_rho_kgm3, critical_T_K,
+              liquid_rho     },
+    .saturated_vapour_rho = { Ancillary::Form::exp_tau_sum,    critical_rho_kgm3, critical_T_K,
+              vapour_rho     },
+};
+
+}  // namespace lostwork

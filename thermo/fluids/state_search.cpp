@@ -1,0 +1,163 @@
+// States by pressure and enthalpy or entropy: the temperature is searched along the isobar.
+#include "thermo/fluids/density.h"
+#include "thermo/fluids/single_phase.h"
+
+#include <cmath>
+
+namespace lostwork {
+namespace {
+
+constexpr int most_steps = 100;
+constexpr double close_enough = 1e-9;  // of the temperature; the step taken last squares it
+
+// What is wanted on the isobar, and the words for a refusal.
+struct Wanted {
+  double p_Pa;
+  double value_SI;
+  bool entropy;
+  std::string_view blame;
+};
+
+double value_of(const Wanted& wanted, const State& state) {
+  return wanted.entropy ? state.s_JkgK : state.h_Jkg;
+}
+
+// The part of the isobar that is searched, on which the value rises with the temperature.
+struct Span {
+  double low_T_K;
+  double high_T_K;
+  double first_T_K;
+  Branch branch;  // of the temperatures below the critical one
+};
+
+// Whether a search that left the bracket has tried its end: only then is the value outside.
+struct Ends {
+  bool low = false;
+  bool high = false;
+};
+
+Phase phase_at(const Fluid& fluid, double T_K, double p_Pa, Branch branch) {
+  if (T_K >= fluid.critical_T_K) {
+    return p_Pa >= fluid.critical_p_Pa ? Phase::supercritical : Phase::vapour;
+  }
+  return branch == Branch::liquid ? Phase::liquid : Phase::vapour;
+}
+
+double inside(const Span& span, double next_T_K, Ends& tried) {
+  if (next_T_K > span.low_T_K && next_T_K < span.high_T_K) {
+    return next_T_K;
+  }
+  if (next_T_K <= span.low_T_K && !tried.low) {
+    tried.low = true;
+    return span.low_T_K;
+  }
+  if (next_T_K >= span.high_T_K && !tried.high) {
+    tried.high = true;
+    return span.high_T_K;
+  }
+  return 0.5 * (span.low_T_K + span.high_T_K);
+}
+
+// The state at one temperature of the search, with the density before it as first guess.
+Result<State> probe(const Fluid& fluid, const Wanted& wanted, const Span& span, double T_K,
+                    double first_kgm3) {
+  const Isotherm isotherm{fluid, T_K};
+  const Branch branch = T_K < fluid.critical_T_K ? span.branch : Branch::fluid;
+  const double first =
+      first_kgm3 > 0.0 ? first_kgm3 : guessed_rho_kgm3(isotherm, branch, wanted.p_Pa);
+  return density_kgm3(isotherm, branch, wanted.p_Pa, first).and_then([&](double rho_kgm3) {
+    return single_phase(isotherm, phase_at(fluid, T_K, wanted.p_Pa, span.branch), wanted.p_Pa,
+                        rho_kgm3);
+  });
+}
+
+Result<State> search(const Fluid& fluid, const Wanted& wanted, Span span) {
+  const Span whole = span;
+  Ends tried;
+  double T_K = inside(span, span.first_T_K, tried);
+  double first_kgm3 = 0.0;
+  for (int step = 0; step < most_steps; ++step) {
+    const Result<State> at = probe(fluid, wanted, span, T_K, first_kgm3);
+    if (!at) {
+      return at;
+    }
+    const double gap = value_of(wanted, *at) - wanted.value_SI;
+    const double slope = wanted.entropy ? at->single->cp_JkgK / T_K : at->single->cp_JkgK;
+    const double T_step = -gap / slope;  // NOLINT(readability-identifier-naming): a temperature
+    if (std::abs(T_step) <= 1e-13 * T_K) {
+      return at;
+    }
+    if ((T_K == whole.low_T_K && gap > 0.0) || (T_K == whole.high_T_K && gap < 0.0)) {
+      if (std::abs(T_step) <= 1e-9 * T_K) {
+        return at;
+      }
+      return refusal(ReasonCode::outside_fluid, wanted.blame, wanted.value_SI);
+    }
+    (gap > 0.0 ? span.high_T_K : span.low_T_K) = T_K;
+    const double next_T_K = inside(span, T_K + T_step, tried);
+    first_kgm3 = at->rho_kgm3 * (1.0 - at->single->expansion_T * (next_T_K - T_K) / T_K);
+    if (std::abs(next_T_K - T_K) <= close_enough * T_K) {
+      return probe(fluid, wanted, span, next_T_K, first_kgm3);
+    }
+    T_K = next_T_K;
+  }
+  return refusal(ReasonCode::not_converged, wanted.blame, wanted.value_SI);
+}
+
+double first_T_K(const Wanted& wanted, const State& from) {
+  const double gap = wanted.value_SI - value_of(wanted, from);
+  const double cp = from.single->cp_JkgK;
+  return wanted.entropy ? from.T_K * std::exp(std::min(gap / cp, 1.0)) : from.T_K + gap / cp;
+}
+
+// Below the critical pressure, where the isobar crosses the two-phase region.
+Result<State> below_critical(const Fluid& fluid, const Wanted& wanted) {
+  const Result<Saturation> line = saturation_at_p(fluid, wanted.p_Pa);
+  if (!line) {
+    if (line.error().code != ReasonCode::outside_fluid) {
+      return tl::unexpected{line.error()};
+    }
+    // Below the saturation pressure at the lowest temperature there is only vapour.
+    return search(fluid, wanted,
+                  {fluid.min_T_K, fluid.max_T_K, 0.8 * fluid.critical_T_K, Branch::vapour});
+  }
+  const double liquid = value_of(wanted, line->liquid);
+  const double vapour = value_of(wanted, line->vapour);
+  if (wanted.value_SI >= liquid && wanted.value_SI <= vapour) {
+    return mixed(*line, (wanted.value_SI - liquid) / (vapour - liquid));
+  }
+  const double boiling_T_K = line->liquid.T_K;
+  if (wanted.value_SI < liquid) {
+    return search(fluid, wanted,
+                  {std::min(lowest_T_K(fluid), boiling_T_K), boiling_T_K,
+                   first_T_K(wanted, line->liquid), Branch::liquid});
+  }
+  return search(fluid, wanted,
+                {boiling_T_K, fluid.max_T_K, first_T_K(wanted, line->vapour), Branch::vapour});
+}
+
+Result<State> on_isobar(const Fluid& fluid, const Wanted& wanted) {
+  if (const auto reason = refused_p(fluid, wanted.p_Pa)) {
+    return tl::unexpected{*reason};
+  }
+  if (!std::isfinite(wanted.value_SI)) {
+    return refusal(ReasonCode::implausible, wanted.blame, wanted.value_SI);
+  }
+  if (wanted.p_Pa < fluid.critical_p_Pa) {
+    return below_critical(fluid, wanted);
+  }
+  return search(fluid, wanted,
+                {lowest_T_K(fluid), fluid.max_T_K, fluid.critical_T_K, Branch::liquid});
+}
+
+}  // namespace
+
+Result<State> state(const Fluid& fluid, const GivenPh& given) {
+  return on_isobar(fluid, {given.p_Pa, given.h_Jkg, false, "enthalpy"});
+}
+
+Result<State> state(const Fluid& fluid, const GivenPs& given) {
+  return on_isobar(fluid, {given.p_Pa, given.s_JkgK, true, "entropy"});
+}
+
+}  // namespace lostwork
