@@ -5,15 +5,13 @@
 #pragma once
 
 #include "daemon/plant_view.h"
-#include "thermo/quantity.h"
-#include "thermo/reading.h"
+#include "storage/history.h"
 
 #include <chrono>
 #include <cstddef>
 #include <cstdint>
 #include <functional>
 #include <memory>
-#include <optional>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -24,25 +22,9 @@ class io_context;
 
 namespace lostwork {
 
-struct TrendQuery {
-  std::string machine;  // MachineView::id
-  Quantity quantity{};
-  Instant from{};
-  Instant to{};
-  std::size_t points = 0;  // at most so many, evenly spread
-};
-
-// Means over [time, next time). No value where nothing was computed in between.
-struct TrendPoint {
-  Instant time{};
-  std::optional<Measured> mean;  // SI; u is the standard uncertainty
-  std::optional<double> lowest_SI;
-  std::optional<double> highest_SI;
-};
-
-// Called on the history thread; throws where the store cannot answer (the client gets a 503
-// without the exception's text, which is logged).
-using HistorySource = std::function<std::vector<TrendPoint>(const TrendQuery&)>;
+// Answers from the store, on the history thread; History::trend is meant. Throws where the store
+// cannot answer: the client gets a 503 without the exception's text, which is logged.
+using HistorySource = std::function<std::vector<Bucket>(const TrendRequest&)>;
 
 enum class Acknowledgement : std::uint8_t { done, no_such_alarm, already };
 // Called on the loop's thread. The comment may be empty; it has at most 500 bytes of valid UTF-8.
@@ -55,7 +37,6 @@ struct WebLimits {
   std::size_t target_bytes = 2048;
   std::size_t connections = 128;
   std::size_t event_streams = 64;
-  std::size_t trend_points = 5000;
   std::size_t trends_waiting = 32;                // questions to the store that wait at most
   std::chrono::milliseconds request_time{10000};  // from the first byte to the whole request
   std::chrono::milliseconds idle_time{30000};     // between two requests of a connection
