@@ -31,6 +31,7 @@ struct OperationState {
   Mode mode = Mode::unknown;
   Instant since{};  // when the mode began
   bool on = false;
+  bool start_seen = false;               // of the present run
   Instant on_since{};                    // the start; when first seen, if it ran before that
   std::optional<Instant> low_since;      // on, but the power is gone since then
   std::optional<Instant> last_good;      // last scan that told on from off
@@ -43,7 +44,9 @@ struct OperationState {
 };
 
 // The state after this scan. A machine that is on when first seen has not started: it is running.
-// Without a good power (or speed) reading the mode stays for unknown_after, then it is unknown.
+// Power decides; speed does where power is missing or between the two shares. Without either the
+// mode stays for unknown_after, then it is unknown. Power clearly below zero tells nothing: a
+// transformer is the wrong way round.
 [[nodiscard]] OperationState after_scan(const OperationOptions& options, const MachineModel& model,
                                         const OperationState& state, const Scan& scan);
 
@@ -51,8 +54,8 @@ struct OperationState {
 
 template <class Archive>
 void archive(Archive& a, OperationState& s) {
-  a(s.mode, s.since, s.on, s.on_since, s.low_since, s.last_good, s.defrost_ended, s.starts,
-    s.starts_seen, s.run_time, s.last_scan);
+  a(s.mode, s.since, s.on, s.start_seen, s.on_since, s.low_since, s.last_good, s.defrost_ended,
+    s.starts, s.starts_seen, s.run_time, s.last_scan);
 }
 
 }  // namespace lostwork
