@@ -7,6 +7,7 @@
 
 #include "storage/alarm_row.h"
 #include "thermo/cycle/assessment.h"
+#include "thermo/health/finding.h"
 #include "thermo/measure/window.h"
 #include "thermo/quantity.h"
 #include "thermo/reading.h"
@@ -113,6 +114,16 @@ class History {
   // Windows that begin in [from, to), in time order.
   [[nodiscard]] std::vector<Window> windows(std::string_view machine, Instant from, Instant to,
                                             std::size_t limit = 100000) const;
+
+  // The newest version of each finding that is not over; of one machine, or of all. Newest onset
+  // first.
+  [[nodiscard]] std::vector<Finding> current_findings(
+      std::optional<std::string_view> machine = {}) const;
+  // The newest version of each finding that was updated in [from, to), those that are over too.
+  [[nodiscard]] std::vector<Finding> findings(Instant from, Instant to,
+                                              std::optional<std::string_view> machine = {}) const;
+  // Every version of one finding, oldest first.
+  [[nodiscard]] std::vector<Finding> finding_versions(std::string_view id) const;
 
   [[nodiscard]] std::vector<JournalRow> journal(const JournalQuery& query) const;  // newest first
   // Checks the chain of hashes over the whole journal: the number of the first row that was

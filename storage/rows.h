@@ -3,6 +3,7 @@
 
 #include "storage/alarm_row.h"
 #include "thermo/cycle/assessment.h"
+#include "thermo/health/finding.h"
 #include "thermo/measure/window.h"
 #include "thermo/reading.h"
 
@@ -47,6 +48,7 @@ struct StateRow {
 struct Batch {
   std::vector<ScanRow> scans;
   std::vector<WindowRow> windows;
+  std::vector<Finding> findings;  // new or changed ones, whole; every version is kept
   std::vector<AlarmRow> alarms;
   std::vector<StateRow> states;
 

@@ -104,6 +104,16 @@ std::optional<Quantity> quantity_named(std::string_view name) {
   return std::nullopt;
 }
 
+std::optional<Quantity> weight_of(Quantity ratio) {
+  switch (ratio) {
+    case Quantity::cop:
+    case Quantity::second_law_efficiency: return Quantity::power;
+    case Quantity::cop_reversible: return Quantity::reversible_power;
+    case Quantity::power_residual: return Quantity::power_expected;
+    default: return std::nullopt;
+  }
+}
+
 Measured at_the_edge(Quantity quantity, const Measured& value_SI) {
   const QuantityInfo& q = info(quantity);
   return {.value = value_SI.value * q.per_SI + q.offset, .u = value_SI.u * q.per_SI};

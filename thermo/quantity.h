@@ -88,6 +88,10 @@ struct QuantityInfo {
 [[nodiscard]] const QuantityInfo& info(Quantity quantity);
 [[nodiscard]] std::optional<Quantity> quantity_named(std::string_view name);
 
+// For a ratio, the quantity in its denominator: mean ratio = sum(ratio * weight) / sum(weight),
+// which is the ratio of the sums. None for all others.
+[[nodiscard]] std::optional<Quantity> weight_of(Quantity ratio);
+
 // From SI to the unit in the quantity's name; an uncertainty is scaled only.
 [[nodiscard]] Measured at_the_edge(Quantity quantity, const Measured& value_SI);
 
