@@ -10,7 +10,9 @@
 namespace lostwork {
 
 // Water by IAPWS-95 at 300 kPa (a pressure common in closed loops; 100 kPa more changes h by 0.1
-// kJ/kg and differences of h by less than 1e-4 of themselves).
+// kJ/kg and differences of h by less than 1e-4 of themselves). Above 133.5 degC, where 300 kPa
+// would boil, the liquid's isobar is continued to 150 degC: a loop that hot is kept liquid by a
+// higher pressure, and differences of h agree with those at 600 kPa to 3e-4.
 struct WaterStream {};
 
 // A liquid of constant volumetric heat capacity, for sources that state one and for brines until
