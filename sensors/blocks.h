@@ -30,7 +30,7 @@ struct Block {
   Table table = Table::holding;
   std::uint16_t address = 0;
   std::uint16_t count = 0;
-  std::vector<std::size_t> needs;  // indices into the needs, all inside the block
+  std::vector<std::size_t> needs{};  // indices into the needs, all inside the block
 };
 
 // Every need is in exactly one block; a need larger than the limit has a block of its own.

@@ -27,14 +27,16 @@ enum class BusFailure : std::uint8_t {
 };
 
 struct BlockAnswer {
-  std::vector<std::uint16_t> words;   // as many as asked for; a bit is a word of 0 or 1
-  std::optional<BusFailure> failure;  // set: words is empty
-  std::uint8_t exception_code = 0;    // with failure exception only
-  Instant time{};                     // when the answer came, or the attempt ended
+  std::vector<std::uint16_t> words{};   // as many as asked for; a bit is a word of 0 or 1
+  std::optional<BusFailure> failure{};  // set: words is empty
+  std::uint8_t exception_code = 0;      // with failure exception only
+  // The line lost its step just before: the words may belong to an earlier request.
+  bool suspect = false;
+  Instant time{};  // when the answer came, or the attempt ended
 };
 
-// One per bus, used by one thread at a time. A call ends within the bus's own timeout, however the
-// other side behaves.
+// One per bus, used by one thread at a time. A call ends within three of the bus's timeouts
+// (connect or wait for a quiet line, pause, answer), however the other side behaves.
 class Bus {
  public:
   Bus() = default;

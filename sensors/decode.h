@@ -46,7 +46,7 @@ struct RegisterSpec {
   double scale = 1.0;  // value = raw * scale + offset, in the point's unit
   double offset = 0.0;
   // Bit patterns by which the device says "no value", tested before scaling, after byte order.
-  std::vector<std::uint32_t> sentinels;
+  std::vector<std::uint32_t> sentinels{};
 };
 
 [[nodiscard]] bool holds_bits(Table table);

@@ -16,8 +16,8 @@ namespace lostwork {
 
 struct FileOnly {};  // comes from a CSV only; live, it is never read
 struct FromRegister {
-  std::string device;
-  RegisterSpec at;
+  std::string device{};
+  RegisterSpec at{};
 };
 struct Constant {
   double value;  // in the point's unit
@@ -36,15 +36,15 @@ struct CalibrationOffset {
 };
 
 struct PointSpec {
-  std::string id;
-  std::string machine;
+  std::string id{};
+  std::string machine{};
   Role role{};
   int circuit = 1;
   Unit unit = Unit::one;
-  std::vector<Accuracy> accuracies;
-  std::string pair;  // empty: none
-  std::optional<PointRange> range;
-  std::vector<CalibrationOffset> calibrations;  // by rising `from`
+  std::vector<Accuracy> accuracies{};
+  std::string pair{};  // empty: none
+  std::optional<PointRange> range{};
+  std::vector<CalibrationOffset> calibrations{};  // by rising `from`
   PointSource source = FileOnly{};
 };
 

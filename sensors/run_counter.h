@@ -19,7 +19,7 @@ struct RunCount {
   Span run{0};
   std::uint64_t starts = 0;  // seen: a machine that runs at the first scan was started before
   bool running = false;
-  std::optional<Instant> last;  // last good power reading
+  std::optional<Instant> last{};  // last good power reading
 
   friend bool operator==(const RunCount&, const RunCount&) = default;
 };

@@ -24,25 +24,25 @@ enum class Parity : std::uint8_t { none, even, odd, count };
 [[nodiscard]] std::optional<Parity> parity_named(std::string_view name);
 
 struct TcpEndpoint {
-  std::string host;  // a numeric address, so that no name service can hold up a bus
+  std::string host{};  // a numeric address, so that no name service can hold up a bus
   std::uint16_t port = 502;
 };
 // "127.0.0.1:1502", "10.0.0.7" (port 502), "[fe80::1]:502"; or a sentence on what is wrong.
 [[nodiscard]] tl::expected<TcpEndpoint, std::string> tcp_endpoint(std::string_view text);
 
 struct SerialLine {
-  std::string device;  // "/dev/ttyUSB0"
-  int baud = 19200;    // 8E1: the serial-line specification's default
+  std::string device{};  // "/dev/ttyUSB0"
+  int baud = 19200;      // 8E1: the serial-line specification's default
   Parity parity = Parity::even;
   int stop_bits = 1;  // 1 or 2
 };
 
 struct BusOptions {
-  std::string id;
+  std::string id{};
   BusKind kind = BusKind::tcp;
-  TcpEndpoint tcp;     // kind tcp
-  SerialLine serial;   // kind rtu
-  Span timeout{1000};  // for one request as a whole; keep it below the shortest scan period
+  TcpEndpoint tcp{};    // kind tcp
+  SerialLine serial{};  // kind rtu
+  Span timeout{1000};   // for one request as a whole; keep it below the shortest scan period
   // Least time between an answer and the next request: some devices fall over when hammered. 100 ms
   // is common practice, no source; 0 for none.
   Span pause{100};
@@ -51,8 +51,8 @@ struct BusOptions {
 };
 
 struct DeviceOptions {
-  std::string id;
-  std::string bus;
+  std::string id{};
+  std::string bus{};
   std::uint8_t unit = 1;  // 1 to 247 on a serial line or behind a gateway; 0 and 255 too on TCP
   Notation addresses = Notation::zero_based;
   std::uint16_t max_registers = 125;  // in one request; some devices allow fewer
@@ -63,17 +63,17 @@ struct DeviceOptions {
 };
 
 struct MachineScan {
-  std::string machine;
+  std::string machine{};
   Span period{10000};
 };
 
 struct Wiring {
   double altitude_m = 0.0;
-  std::vector<BusOptions> buses;
-  std::vector<DeviceOptions> devices;
-  std::vector<MachineScan> machines;
+  std::vector<BusOptions> buses{};
+  std::vector<DeviceOptions> devices{};
+  std::vector<MachineScan> machines{};
   // Of one machine in the order of its MachineModel::points.
-  std::vector<PointSpec> points;
+  std::vector<PointSpec> points{};
 };
 
 // Index into Wiring::points of each point of the machine, in that order.
