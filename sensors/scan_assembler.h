@@ -6,6 +6,7 @@
 #include "thermo/reading.h"
 
 #include <cstddef>
+#include <optional>
 #include <span>
 #include <string_view>
 #include <vector>
@@ -32,13 +33,14 @@ class ScanAssembler {
   struct Slot {
     std::size_t point;  // index into Wiring::points
     bool wired;
-    bool fresh = false;
-    Reading last;
     PointSpec spec;
+    bool fresh = false;  // no scan has used `last` yet
+    std::optional<Reading> last{};
   };
+  [[nodiscard]] Reading current(Slot& slot, Instant time) const;
 
   double altitude_m_;
-  Span period_;
+  Span period_{MachineScan{}.period};
   std::vector<Slot> slots_;
 };
 
