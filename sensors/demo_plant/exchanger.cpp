@@ -1,0 +1,23 @@
+#include "sensors/demo_plant/exchanger.h"
+
+#include <cmath>
+
+namespace lostwork {
+
+double conductance_WK(const ExchangerParameters& exchanger, double water_kgs, double fouling) {
+  const double clean = exchanger.water_resistance_KW + exchanger.refrigerant_resistance_KW;
+  const double water =
+      exchanger.water_resistance_KW * std::pow(exchanger.rated_kgs / water_kgs, 0.8);
+  return 1.0 / (water + exchanger.refrigerant_resistance_KW + fouling * clean);
+}
+
+double effectiveness(double ntu) {
+  return -std::expm1(-ntu);
+}
+
+double counterflow_effectiveness(double ntu, double capacity_ratio) {
+  const double e = std::exp(-ntu * (1.0 - capacity_ratio));
+  return (1.0 - e) / (1.0 - capacity_ratio * e);
+}
+
+}  // namespace lostwork
