@@ -1,0 +1,215 @@
+#include "daemon/props.h"
+
+#include "daemon/arguments.h"
+#include "daemon/csv.h"
+#include "daemon/props_points.h"
+#include "thermo/fluids/fluid.h"
+
+#include <algorithm>
+#include <array>
+#include <charconv>
+#include <optional>
+#include <string>
+#include <utility>
+
+namespace lostwork {
+namespace {
+
+constexpr std::array options{
+    Option{"--fluid", "NAME","R134a or R718 (also called water); --list shows all"                             },
+    Option{"--given", "PAIR",
+           "what is given: T,p T,x p,x p,h or p,s (degC, kPa absolute, kJ/kg, kJ/(kg K), vapour "
+           "quality 0..1)"                                                                    },
+    Option{"--input", "FILE",
+           "a CSV of points instead of the two values; its header names the two columns, for "
+           "example T_degC,p_kPa"                                                             },
+    Option{"--exact",     "", "the full equation of state; it is what every answer comes from"},
+    Option{ "--list",     "",          "the fluids: composition, safety class, limits, source"},
+};
+
+constexpr CommandLine command{
+    .usage =
+        "lostwork props --fluid NAME --given PAIR VALUE VALUE\n"
+        "       lostwork props --fluid NAME --given PAIR --input FILE\n"
+        "       lostwork props --list",
+    .purpose =
+        "Properties of a fluid as CSV, one row a point. A point without an answer has an empty "
+        "row\n"
+        "with the reason in the last column. Refrigerants: h = 200 kJ/kg and s = 1 kJ/(kg K) for\n"
+        "saturated liquid at 0 degC; water: u = s = 0 for saturated liquid at the triple point.\n"
+        "The safety classes of --list are for orientation; the local code decides.",
+    .options = options,
+    .most_values = 2};
+
+// Ten significant digits.
+std::string digits(double value) {
+  std::array<char, 32> text{};
+  const auto [end, error] =
+      std::to_chars(text.data(), text.data() + text.size(), value, std::chars_format::general, 10);
+  return {text.data(), end};
+}
+std::string digits(const std::optional<double>& value) {
+  return value ? digits(*value) : "";
+}
+
+double celsius(double T_K) {
+  return T_K - 273.15;
+}
+double kilo(double SI) {
+  return SI / 1e3;
+}
+
+void write_row(std::ostream& out, const Fluid& fluid, const State& state) {
+  std::optional<double> cp_kJ_kgK;  // NOLINT(readability-identifier-naming): the column's name
+  std::optional<double> w_m_s;
+  if (state.single) {
+    cp_kJ_kgK = kilo(state.single->cp_JkgK);
+    w_m_s = state.single->sound_speed_w;
+  }
+  out << fluid.name << ',' << name(state.phase) << ',' << digits(celsius(state.T_K)) << ','
+      << digits(kilo(state.p_Pa)) << ',' << digits(state.rho_kgm3) << ','
+      << digits(kilo(state.h_Jkg)) << ',' << digits(kilo(state.s_JkgK)) << ','
+      << digits(state.quality) << ',' << digits(cp_kJ_kgK) << ',' << digits(w_m_s) << ",\n";
+}
+
+// "outside_fluid: temperature 300 degC: outside the range of the fluid's equation (-103.3 to ...)"
+std::string sentence(const Fluid& fluid, const Reason& reason) {
+  std::string found{reason.blame};
+  std::string limits;
+  if (reason.blame == "temperature") {
+    found += ' ' + digits(celsius(reason.value_SI)) + " degC";
+    limits = " (" + digits(celsius(fluid.min_T_K)) + " to " + digits(celsius(fluid.max_T_K)) +
+             " degC; saturation below " + digits(celsius(fluid.critical_T_K)) + " degC)";
+  } else if (reason.blame == "pressure") {
+    found += ' ' + digits(kilo(reason.value_SI)) + " kPa";
+    limits = " (up to " + digits(kilo(fluid.max_p_Pa)) + " kPa; saturation below " +
+             digits(kilo(fluid.critical_p_Pa)) + " kPa)";
+  } else if (reason.blame == "enthalpy") {
+    found += ' ' + digits(kilo(reason.value_SI)) + " kJ/kg";
+  } else if (reason.blame == "entropy") {
+    found += ' ' + digits(kilo(reason.value_SI)) + " kJ/(kg K)";
+  } else if (reason.blame == "quality") {
+    found += ' ' + digits(reason.value_SI) + " (0 to 1)";
+  }
+  if (reason.code != ReasonCode::outside_fluid) {
+    limits.clear();
+  }
+  return std::string{name(reason.code)} + ": " + found + ": " + std::string{text(reason.code)} +
+         limits;
+}
+
+void write_answers(std::ostream& out, const Fluid& fluid, const GivenPair& pair,
+                   std::span<const Point> points) {
+  out << "fluid,phase,T_degC,p_kPa,rho_kg_m3,h_kJ_kg,s_kJ_kgK,x,cp_kJ_kgK,w_m_s,reason\n";
+  for (const Point& point : points) {
+    const Result<State> answer = pair.answer(fluid, point);
+    if (answer) {
+      write_row(out, fluid, *answer);
+    } else {
+      out << ",,,,,,,,,," << csv_field(sentence(fluid, answer.error())) << '\n';
+    }
+  }
+}
+
+void write_list(std::ostream& out) {
+  out << "fluid,also,composition,safety_class,min_T_degC,max_T_degC,max_p_kPa,critical_T_degC,"
+         "critical_p_kPa,reference_state,source\n";
+  for (const Fluid* fluid : fluids()) {
+    out << fluid->name << ',' << csv_field(fluid->second_name) << ','
+        << csv_field(fluid->composition) << ',' << csv_field(fluid->safety_class) << ','
+        << digits(celsius(fluid->min_T_K)) << ',' << digits(celsius(fluid->max_T_K)) << ','
+        << digits(kilo(fluid->max_p_Pa)) << ',' << digits(celsius(fluid->critical_T_K)) << ','
+        << digits(kilo(fluid->critical_p_Pa)) << ',' << csv_field(fluid->reference_state) << ','
+        << csv_field(fluid->source) << '\n';
+  }
+}
+
+struct Question {
+  const Fluid* fluid;
+  const GivenPair* pair;
+  std::vector<Point> points;
+};
+
+std::string known_fluids() {
+  std::string out;
+  for (const Fluid* fluid : fluids()) {
+    out.append(" ").append(fluid->name);
+  }
+  return out;
+}
+
+tl::expected<std::vector<Point>, std::string> points_of(const Arguments& arguments,
+                                                        const GivenPair& pair) {
+  const auto input = arguments.value("--input");
+  if (input && !arguments.values.empty()) {
+    return tl::unexpected{std::string{arguments.values[0]} +
+                          ": not expected beside --input; allowed is one of the two"};
+  }
+  if (input) {
+    return read_points(*input, pair);
+  }
+  if (arguments.values.size() != 2) {
+    return tl::unexpected{std::to_string(arguments.values.size()) + " values; --given " +
+                          std::string{pair.name} + " needs two values, or --input FILE"};
+  }
+  Point point{};
+  for (std::size_t i = 0; i < point.size(); ++i) {
+    const auto value = finite_number(arguments.values[i]);
+    if (!value) {
+      return tl::unexpected{std::string{pair.columns[i]} + " = \"" +
+                            std::string{arguments.values[i]} + "\": allowed is a finite number"};
+    }
+    point[i] = *value;
+  }
+  return std::vector{point};
+}
+
+tl::expected<Question, std::string> question_of(const Arguments& arguments) {
+  const auto fluid_name = arguments.value("--fluid");
+  const auto pair_name = arguments.value("--given");
+  if (!fluid_name || !pair_name) {
+    return tl::unexpected{std::string{fluid_name ? "--given" : "--fluid"} +
+                          ": is required (or --list); see lostwork props --help"};
+  }
+  const Fluid* const fluid = fluid_named(*fluid_name);
+  if (fluid == nullptr) {
+    return tl::unexpected{"--fluid " + std::string{*fluid_name} +
+                          ": no such fluid; known:" + known_fluids()};
+  }
+  const GivenPair* const pair = given_pair(*pair_name);
+  if (pair == nullptr) {
+    return tl::unexpected{"--given " + std::string{*pair_name} +
+                          ": allowed is T,p T,x p,x p,h or p,s"};
+  }
+  return points_of(arguments, *pair).map([&](std::vector<Point> points) {
+    return Question{fluid, pair, std::move(points)};
+  });
+}
+
+}  // namespace
+
+int props_command(std::span<const std::string_view> arguments, std::ostream& out,
+                  std::ostream& err) {
+  const auto parsed = parse(command, arguments);
+  if (!parsed) {
+    err << "lostwork props: " << parsed.error() << '\n';
+    return 2;
+  }
+  if (parsed->help) {
+    out << help_text(command);
+    return 0;
+  }
+  if (parsed->has("--list")) {
+    write_list(out);
+    return 0;
+  }
+  const auto question = question_of(*parsed);
+  if (!question) {
+    err << "lostwork props: " << question.error() << '\n';
+    return 2;
+  }
+  write_answers(out, *question->fluid, *question->pair, question->points);
+  return 0;
+}
+
+}  // namespace lostwork
