@@ -87,7 +87,10 @@ class ModbusBus final : public Bus {
       failures_ = 0;
       answered_ = true;
       answer.suspect = unsure_[request.unit];
-      unsure_[request.unit] = false;
+      if (answer.suspect) {  // if it was an earlier one's, its own may come right behind
+        unsure_[request.unit] = false;
+        quiet_from_ = Steady::now() + options_.timeout;
+      }
     }
     last_use_ = Steady::now();
     answer.time = clocks_.utc();

@@ -1,0 +1,21 @@
+# Fails when one of FILES (libraries, programs) uses or holds a function of libmodbus that can write.
+cmake_policy(VERSION 3.25)
+# The raw request is one of them: it sends whatever function code it is given.
+set(writes "modbus_(write_|mask_write_|send_raw_request)")
+set(bad "")
+foreach(file IN LISTS FILES)
+  foreach(option "" "-D")
+    execute_process(COMMAND ${NM} ${option} ${file}
+      OUTPUT_VARIABLE symbols ERROR_VARIABLE complaint RESULT_VARIABLE failed)
+    if(failed AND NOT option)
+      message(FATAL_ERROR "cannot read the symbols of ${file}: ${complaint}")
+    endif()
+    string(REGEX MATCHALL "[a-zA-Z0-9_]*${writes}[a-zA-Z0-9_]*" found "${symbols}")
+    if(found)
+      string(APPEND bad "\n  ${file}: ${found}")
+    endif()
+  endforeach()
+endforeach()
+if(bad)
+  message(FATAL_ERROR "functions that can write to a plant:${bad}")
+endif()
