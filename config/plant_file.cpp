@@ -23,7 +23,7 @@ std::optional<std::array<double, 2>> two_numbers(const toml::node& node) {
   return out;
 }
 
-bool take_accuracy_part(const std::string& name, const toml::node& node, AccuracyOptions& out) {
+bool take_accuracy_part(const std::string& name, const toml::node& node, AccuracyEntry& out) {
   if (name == "class") {
     out.sensor_class = node.value<std::string>();
     return out.sensor_class.has_value();
@@ -50,8 +50,8 @@ bool take_accuracy_part(const std::string& name, const toml::node& node, Accurac
   return true;
 }
 
-std::optional<AccuracyOptions> one_accuracy(const toml::table& table) {
-  AccuracyOptions out;
+std::optional<AccuracyEntry> one_accuracy(const toml::table& table) {
+  AccuracyEntry out;
   for (const auto& [name, node] : table) {
     if (!take_accuracy_part(std::string{name.str()}, node, out)) {
       return std::nullopt;
@@ -61,12 +61,12 @@ std::optional<AccuracyOptions> one_accuracy(const toml::table& table) {
   return table.empty() || !span_fits ? std::nullopt : std::optional{out};
 }
 
-std::vector<AccuracyOptions> take_accuracy(const TomlPlace& place, std::string_view key) {
+std::vector<AccuracyEntry> take_accuracy(const TomlPlace& place, std::string_view key) {
   const toml::node* node = place.table.get(key);
   if (node == nullptr) {
     return {};
   }
-  std::vector<AccuracyOptions> out;
+  std::vector<AccuracyEntry> out;
   const auto add = [&out](const toml::node& part) {
     const auto one = part.is_table() ? one_accuracy(*part.as_table()) : std::nullopt;
     if (one) {
@@ -89,32 +89,31 @@ std::vector<AccuracyOptions> take_accuracy(const TomlPlace& place, std::string_v
   return out;
 }
 
-StreamOptions take_stream(const TomlPlace& place, std::string_view key) {
-  StreamOptions out;
+StreamEntry take_stream(const TomlPlace& place, std::string_view key) {
+  StreamEntry out;
   const toml::node* node = place.table.get(key);
   if (node == nullptr) {
     return out;
   }
   static constexpr std::array<std::string_view, 1> liquids{"water"};
   static constexpr std::array stream_keys{
-      Key<StreamOptions>{       "fluid",        &StreamOptions::fluid,               "the liquid",false,   0,   0, liquids},
-      Key<StreamOptions>{"rho_cp_J_m3K", &StreamOptions::rho_cp_J_m3K, "volumetric heat capacity",
-                         false, 1e5, 1e7        },
+      Key<StreamEntry>{       "fluid",        &StreamEntry::fluid,               "the liquid",false,   0,   0, liquids},
+      Key<StreamEntry>{"rho_cp_J_m3K", &StreamEntry::rho_cp_J_m3K, "volumetric heat capacity",
+                       false, 1e5, 1e7        },
   };
   if (const toml::table* table = node->as_table()) {
     const TomlPlace inner{*table, place.where + '.' + std::string{key}, place.problems};
-    return read_by_keys<StreamOptions>(inner, stream_keys);
+    return read_by_keys<StreamEntry>(inner, stream_keys);
   }
   place.refuse(*node, key, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }");
   return out;
 }
 
-CasingLossOptions take_casing_loss(const TomlPlace& place) {
+CasingLossEntry take_casing_loss(const TomlPlace& place) {
   static constexpr std::array casing_keys{
-      Key<CasingLossOptions>{"fraction", &CasingLossOptions::fraction,    "share of the power", true,
-                             0,0.5                            },
-      Key<CasingLossOptions>{   "limit",    &CasingLossOptions::limit, "how far off it may be", true, 0,
-                             0.5},
+      Key<CasingLossEntry>{"fraction", &CasingLossEntry::fraction,    "share of the power", true, 0,
+                           0.5                                                                          },
+      Key<CasingLossEntry>{   "limit",    &CasingLossEntry::limit, "how far off it may be", true, 0, 0.5},
   };
   const toml::node* node = place.table.get("casing_loss");
   if (node == nullptr) {
@@ -122,31 +121,31 @@ CasingLossOptions take_casing_loss(const TomlPlace& place) {
   }
   if (const toml::table* table = node->as_table()) {
     const TomlPlace inner{*table, place.where + ".casing_loss", place.problems};
-    return read_by_keys<CasingLossOptions>(inner, casing_keys);
+    return read_by_keys<CasingLossEntry>(inner, casing_keys);
   }
   place.refuse(*node, "casing_loss", "{ fraction = 0.05, limit = 0.05 }");
   return {};
 }
 
-std::vector<std::int64_t> take_sentinels(const TomlPlace& place) {
+std::vector<std::variant<std::int64_t, double>> take_sentinels(const TomlPlace& place) {
   const toml::node* node = place.table.get("sentinels");
   if (node == nullptr) {
     return {};
   }
-  std::vector<std::int64_t> out;
+  std::vector<std::variant<std::int64_t, double>> out;
   if (const toml::array* array = node->as_array()) {
     for (const toml::node& part : *array) {
-      const toml::value<std::int64_t>* number = part.as_integer();
-      if (number != nullptr && number->get() >= 0 && number->get() <= 0xFFFFFFFFLL) {
-        out.push_back(number->get());
+      if (const auto* whole = part.as_integer()) {
+        out.emplace_back(whole->get());
+      } else if (const auto* number = part.as_floating_point()) {
+        out.emplace_back(number->get());
       }
     }
     if (out.size() == array->size()) {
       return out;
     }
   }
-  place.refuse(*node, "sentinels",
-               "whole numbers from 0 to 0xFFFFFFFF in brackets, as in [0x8000]");
+  place.refuse(*node, "sentinels", "raw numbers in brackets, as in [0x8000]");
   return {};
 }
 
@@ -161,12 +160,12 @@ std::optional<std::chrono::sys_seconds> take_date(const toml::node* node) {
                   : std::nullopt;
 }
 
-std::vector<CorrectionOptions> take_corrections(const TomlPlace& place) {
+std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
   const toml::node* node = place.table.get("corrections");
   if (node == nullptr) {
     return {};
   }
-  std::vector<CorrectionOptions> out;
+  std::vector<CorrectionEntry> out;
   if (const toml::array* array = node->as_array()) {
     for (const toml::node& part : *array) {
       const toml::table* table = part.as_table();
@@ -193,13 +192,13 @@ S read_one(const TomlPlace& place, std::span<const Key<S>> keys) {
   if constexpr (requires { out.line; }) {
     out.line = place.table.source().begin.line;
   }
-  if constexpr (std::is_same_v<S, MachineOptions>) {
+  if constexpr (std::is_same_v<S, MachineEntry>) {
     out.casing_loss = take_casing_loss(place);
     out.cold_stream = take_stream(place, "cold_stream");
     out.hot_stream = take_stream(place, "hot_stream");
-  } else if constexpr (std::is_same_v<S, PairOptions>) {
+  } else if constexpr (std::is_same_v<S, PairEntry>) {
     out.difference = take_accuracy(place, "difference");
-  } else if constexpr (std::is_same_v<S, PointOptions>) {
+  } else if constexpr (std::is_same_v<S, PointEntry>) {
     out.accuracy = take_accuracy(place, "accuracy");
     out.sentinels = take_sentinels(place);
     out.corrections = take_corrections(place);

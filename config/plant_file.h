@@ -1,7 +1,7 @@
 // The plant file as it is written: one option struct for each of its tables, in the file's own
 // units.
 //
-// Keys, limits and meanings: plant_keys.h. What the rest of the program works with: plant.h.
+// Keys, limits and meanings: plant_keys.h. What the rest of the program works with: plant_config.h.
 #pragma once
 
 #include "config/problem.h"
@@ -18,22 +18,22 @@
 
 namespace lostwork {
 
-struct SiteOptions {
+struct SiteEntry {
   std::string name;
   double altitude_m = 0.0;
   std::string timezone = "UTC";
 };
 
-struct StorageOptions {
+struct StorageEntry {
   std::string file = "plant.db";
   double commit_s = 60.0;
 };
 
-struct WebOptions {
+struct WebEntry {
   std::string listen = "127.0.0.1:8470";
 };
 
-struct BusOptions {
+struct BusEntry {
   std::uint32_t line = 0;
   std::string id;
   std::string kind = "tcp";
@@ -42,9 +42,10 @@ struct BusOptions {
   std::string parity = "even";
   std::int64_t stop_bits = 1;
   double response_timeout_ms = 1000.0;
+  double pause_ms = 100.0;
 };
 
-struct DeviceOptions {
+struct DeviceEntry {
   std::uint32_t line = 0;
   std::string id;
   std::string bus;
@@ -54,17 +55,17 @@ struct DeviceOptions {
 };
 
 // A liquid as the file names it, or its constant volumetric heat capacity.
-struct StreamOptions {
+struct StreamEntry {
   std::string fluid = "water";
   std::optional<double> rho_cp_J_m3K;
 };
 
-struct CasingLossOptions {
+struct CasingLossEntry {
   double fraction = 0.05;
   double limit = 0.05;
 };
 
-struct MachineOptions {
+struct MachineEntry {
   std::uint32_t line = 0;
   std::string id;
   std::string name;
@@ -76,13 +77,13 @@ struct MachineOptions {
   double rated_power_kW = 0.0;
   std::optional<double> casing_surroundings_degC;
   std::optional<std::string> accept;
-  CasingLossOptions casing_loss;
-  StreamOptions cold_stream;
-  StreamOptions hot_stream;
+  CasingLossEntry casing_loss;
+  StreamEntry cold_stream;
+  StreamEntry hot_stream;
 };
 
 // One component of an accuracy statement, in the point's unit.
-struct AccuracyOptions {
+struct AccuracyEntry {
   std::optional<std::string> sensor_class;
   std::optional<double> limit;
   std::optional<double> percent_of_reading;
@@ -91,25 +92,25 @@ struct AccuracyOptions {
   std::optional<double> u;
 };
 
-struct PairOptions {
+struct PairEntry {
   std::uint32_t line = 0;
   std::string id;
-  std::vector<AccuracyOptions> difference;
+  std::vector<AccuracyEntry> difference;
 };
 
-struct CorrectionOptions {
+struct CorrectionEntry {
   std::chrono::sys_seconds from{};
   double add = 0.0;
 };
 
-struct PointOptions {
+struct PointEntry {
   std::uint32_t line = 0;
   std::string id;
   std::string machine;
   std::int64_t circuit = 1;
   std::string role;
   std::string unit;
-  std::vector<AccuracyOptions> accuracy;
+  std::vector<AccuracyEntry> accuracy;
   std::optional<std::string> pair;
   std::optional<std::string> device;
   std::optional<std::int64_t> register_number;
@@ -118,14 +119,14 @@ struct PointOptions {
   std::string order = "ABCD";
   double scale = 1.0;
   double offset = 0.0;
-  std::vector<std::int64_t> sentinels;
+  std::vector<std::variant<std::int64_t, double>> sentinels;
   std::optional<std::array<double, 2>> range;
   std::optional<double> value;
   std::string at = "in";
-  std::vector<CorrectionOptions> corrections;
+  std::vector<CorrectionEntry> corrections;
 };
 
-struct SafetyLimitOptions {
+struct SafetyLimitEntry {
   std::uint32_t line = 0;
   std::string machine;
   std::string kind;
@@ -137,16 +138,16 @@ struct SafetyLimitOptions {
 };
 
 struct PlantFile {
-  SiteOptions site;
-  StorageOptions storage;
-  WebOptions web;
+  SiteEntry site;
+  StorageEntry storage;
+  WebEntry web;
   Tariff tariff;
-  std::vector<BusOptions> buses;
-  std::vector<DeviceOptions> devices;
-  std::vector<MachineOptions> machines;
-  std::vector<PairOptions> pairs;
-  std::vector<PointOptions> points;
-  std::vector<SafetyLimitOptions> safety_limits;
+  std::vector<BusEntry> buses;
+  std::vector<DeviceEntry> devices;
+  std::vector<MachineEntry> machines;
+  std::vector<PairEntry> pairs;
+  std::vector<PointEntry> points;
+  std::vector<SafetyLimitEntry> safety_limits;
 };
 
 // `name` stands in messages only. All problems of the text at once; a text that is no TOML has one.

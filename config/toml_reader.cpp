@@ -5,15 +5,13 @@
 #include <sstream>
 
 namespace lostwork {
-namespace {
-
 std::string number_text(double value) {
   std::array<char, 32> buffer{};
-  const auto end = std::to_chars(buffer.data(), buffer.data() + buffer.size(), value);
+  const bool plain = std::abs(value) < 1e9 && (value == 0.0 || std::abs(value) > 1e-6);
+  const auto end = std::to_chars(buffer.data(), buffer.data() + buffer.size(), value,
+                                 plain ? std::chars_format::fixed : std::chars_format::general);
   return {buffer.data(), end.ptr};
 }
-
-}  // namespace
 
 std::uint32_t line_of(const toml::node& node) {
   return node.source().begin.line;

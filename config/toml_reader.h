@@ -12,6 +12,7 @@
 
 namespace lostwork {
 
+[[nodiscard]] std::string number_text(double value);  // shortest that reads back the same
 [[nodiscard]] std::string found_text(const toml::node& node);
 [[nodiscard]] std::string allowed_number(double min, double max, bool whole);
 [[nodiscard]] std::string allowed_choices(std::span<const std::string_view> choices);

@@ -1,0 +1,300 @@
+#include "config/plant_config.h"
+
+#include "config/point_entry.h"
+#include "thermo/fluids/fluid.h"
+
+#include <algorithm>
+#include <cmath>
+#include <cstring>
+#include <date/tz.h>
+#include <fstream>
+#include <set>
+#include <sstream>
+
+namespace lostwork {
+namespace {
+
+constexpr double kilo = 1e3;
+
+Span milliseconds(double ms) {
+  return Span{std::llround(ms)};
+}
+
+void refuse(Problems& problems, std::uint32_t line, std::string key, std::string found,
+            std::string allowed) {
+  problems.push_back({.line = line,
+                      .key = std::move(key),
+                      .found = std::move(found),
+                      .allowed = std::move(allowed)});
+}
+
+template <class Entries>
+void refuse_doubles(const Entries& entries, std::string_view table, Problems& problems) {
+  std::set<std::string> seen;
+  for (const auto& entry : entries) {
+    if (!seen.insert(entry.id).second) {
+      refuse(problems, entry.line, std::string{table} + ".id", entry.id, "each id only once");
+    }
+  }
+}
+
+template <class Entries>
+bool has_id(const Entries& entries, std::string_view id) {
+  return std::any_of(entries.begin(), entries.end(), [id](const auto& e) { return e.id == id; });
+}
+
+template <class Entries>
+std::string ids_of(const Entries& entries) {
+  std::string out;
+  for (const auto& entry : entries) {
+    out += (out.empty() ? "" : ", ") + entry.id;
+  }
+  return out.empty() ? "none is declared" : "one of " + out;
+}
+
+bool knows_timezone(const std::string& name) {
+  try {
+    return date::locate_zone(name) != nullptr;
+  } catch (const std::runtime_error&) {
+    return false;
+  }
+}
+
+BusOptions bus_options(const BusEntry& entry, Problems& problems) {
+  BusOptions out;
+  out.id = entry.id;
+  out.kind = bus_kind_named(entry.kind).value_or(BusKind::tcp);
+  out.timeout = milliseconds(entry.response_timeout_ms);
+  out.pause = milliseconds(entry.pause_ms);
+  if (out.kind == BusKind::rtu) {
+    out.serial = {.device = entry.address,
+                  .baud = static_cast<int>(entry.baud),
+                  .parity = parity_named(entry.parity).value_or(Parity::even),
+                  .stop_bits = static_cast<int>(entry.stop_bits)};
+    return out;
+  }
+  const auto endpoint = tcp_endpoint(entry.address);
+  if (endpoint) {
+    out.tcp = *endpoint;
+  } else {
+    refuse(problems, entry.line, "bus.address", entry.address, endpoint.error());
+  }
+  return out;
+}
+
+DeviceOptions device_options(const DeviceEntry& entry, const PlantFile& file, Problems& problems) {
+  if (!has_id(file.buses, entry.bus)) {
+    refuse(problems, entry.line, "device.bus", entry.bus, ids_of(file.buses));
+  }
+  DeviceOptions out;
+  out.id = entry.id;
+  out.bus = entry.bus;
+  out.unit = static_cast<std::uint8_t>(entry.unit);
+  out.addresses = notation_named(entry.addresses).value_or(Notation::zero_based);
+  out.max_gap = static_cast<std::uint16_t>(entry.largest_gap);
+  return out;
+}
+
+ModelStream model_stream(const StreamEntry& entry) {
+  ModelStream out;
+  if (entry.rho_cp_J_m3K) {
+    out.fluid = ConstantStream{.rho_cp_JmK = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0};
+  }
+  return out;
+}
+
+std::string fluid_names() {
+  std::string out = "a fluid of `lostwork props --list`:";
+  for (const Fluid* fluid : fluids()) {
+    out += ' ' + std::string{fluid->name};
+  }
+  return out;
+}
+
+MachineConfig machine_config(const MachineEntry& entry, Problems& problems) {
+  MachineConfig out;
+  out.accept_unattended = entry.accept == "unattended";
+  MachineModel& model = out.model;
+  model.id = entry.id;
+  model.name = entry.name;
+  model.duty = entry.duty == "heating" ? Duty::heating : Duty::cooling;
+  model.evaporator = entry.evaporator == "flooded" ? EvaporatorKind::flooded : EvaporatorKind::dry;
+  model.refrigerant = fluid_named(entry.refrigerant);
+  if (model.refrigerant == nullptr) {
+    refuse(problems, entry.line, "machine.refrigerant", entry.refrigerant, fluid_names());
+  }
+  model.cold = model_stream(entry.cold_stream);
+  model.hot = model_stream(entry.hot_stream);
+  model.rated_power_W = entry.rated_power_kW * kilo;
+  model.casing_loss = {.value = entry.casing_loss.fraction,
+                       .u = entry.casing_loss.limit / std::sqrt(3.0)};
+  if (entry.casing_surroundings_degC) {
+    model.casing_T_K = to_SI(Unit::degC, *entry.casing_surroundings_degC, 0.0);
+  }
+  model.scan_period = milliseconds(entry.scan_s * kilo);
+  return out;
+}
+
+// Adds the points of one machine to its model and to the wiring.
+void add_points(MachineConfig& machine, const PlantFile& file, Wiring& wiring, Problems& problems) {
+  std::set<Role> roles;
+  for (const PointEntry& entry : file.points) {
+    if (entry.machine != machine.model.id) {
+      continue;
+    }
+    const auto spec = point_spec(entry, wiring, problems);
+    if (!spec) {
+      continue;
+    }
+    if (!roles.insert(spec->role).second) {
+      refuse(problems, entry.line, "point.role", entry.role, "each role of a machine only once");
+    }
+    ModelPoint point{.id = entry.id,
+                     .role = spec->role,
+                     .circuit = spec->circuit,
+                     .mass_flow = spec->unit == Unit::kg_s,
+                     .pair = {},
+                     .shared_variance = 0.0};
+    if (entry.pair) {
+      const PairShare share = pair_share(entry, *spec, file, problems);
+      point.pair = share.pair;
+      point.shared_variance = share.variance;
+    }
+    if (entry.at == "out" && spec->role == Role::cold_flow) {
+      machine.model.cold.flow_at = FlowPlace::out;
+    }
+    if (entry.at == "out" && spec->role == Role::hot_flow) {
+      machine.model.hot.flow_at = FlowPlace::out;
+    }
+    machine.model.points.push_back(std::move(point));
+    wiring.points.push_back(*spec);
+  }
+}
+
+SafetyKind safety_kind(const std::string& kind) {
+  if (kind == "high_pressure") {
+    return SafetyKind::high_pressure;
+  }
+  if (kind == "freezing") {
+    return SafetyKind::freezing;
+  }
+  return kind == "oxygen" ? SafetyKind::oxygen : SafetyKind::refrigerant_detector;
+}
+
+// A role of the same dimension stands for the unit check.
+Role role_like(const std::string& kind) {
+  switch (safety_kind(kind)) {
+    case SafetyKind::high_pressure: return Role::discharge_pressure;
+    case SafetyKind::freezing: return Role::suction_temperature;
+    case SafetyKind::oxygen: return Role::oxygen;
+    default: return Role::leak_concentration;
+  }
+}
+
+void add_safety_limit(const SafetyLimitEntry& entry, PlantConfig& plant, Problems& problems) {
+  const auto machine =
+      std::find_if(plant.machines.begin(), plant.machines.end(),
+                   [&entry](const MachineConfig& m) { return m.model.id == entry.machine; });
+  const auto unit = unit_named(entry.unit);
+  if (!unit || !allowed(*unit, role_like(entry.kind))) {
+    refuse(problems, entry.line, "safety_limit.unit", entry.unit,
+           "a unit that fits kind \"" + entry.kind + '"');
+    return;
+  }
+  if (machine == plant.machines.end()) {
+    refuse(problems, entry.line, "safety_limit.machine", entry.machine, "the id of a machine");
+    return;
+  }
+  const SafetyKind kind = safety_kind(entry.kind);
+  if (std::any_of(machine->limits.begin(), machine->limits.end(),
+                  [kind](const SafetyLimit& l) { return l.kind == kind; })) {
+    refuse(problems, entry.line, "safety_limit.kind", entry.kind,
+           "each kind only once for a machine");
+    return;
+  }
+  machine->limits.push_back({.kind = kind,
+                             .machine = entry.machine,
+                             .limit_SI = to_SI(*unit, entry.limit, plant.wiring.altitude_m),
+                             .document = entry.document,
+                             .jurisdiction = entry.jurisdiction,
+                             .entered_by = entry.entered_by.value_or("")});
+}
+
+void check_names(const PlantFile& file, Problems& problems) {
+  refuse_doubles(file.buses, "bus", problems);
+  refuse_doubles(file.devices, "device", problems);
+  refuse_doubles(file.machines, "machine", problems);
+  refuse_doubles(file.pairs, "pair", problems);
+  refuse_doubles(file.points, "point", problems);
+  if (file.machines.empty()) {
+    refuse(problems, 0, "[[machine]]", "", "at least one machine is required");
+  }
+  if (!knows_timezone(file.site.timezone)) {
+    refuse(problems, 0, "site.timezone", file.site.timezone,
+           "an IANA time zone, as \"Europe/London\"");
+  }
+  for (const PointEntry& point : file.points) {
+    if (!has_id(file.machines, point.machine)) {
+      refuse(problems, point.line, "point.machine", point.machine, ids_of(file.machines));
+    }
+  }
+}
+
+}  // namespace
+
+tl::expected<PlantConfig, Problems> plant_from(const PlantFile& file) {
+  Problems problems;
+  check_names(file, problems);
+  PlantConfig plant;
+  plant.site = file.site.name;
+  plant.timezone = file.site.timezone;
+  plant.database = file.storage.file;
+  plant.commit = milliseconds(file.storage.commit_s * kilo);
+  plant.listen = file.web.listen;
+  plant.tariff = file.tariff;
+  plant.wiring.altitude_m = file.site.altitude_m;
+  for (const BusEntry& entry : file.buses) {
+    plant.wiring.buses.push_back(bus_options(entry, problems));
+  }
+  for (const DeviceEntry& entry : file.devices) {
+    plant.wiring.devices.push_back(device_options(entry, file, problems));
+  }
+  for (const MachineEntry& entry : file.machines) {
+    plant.machines.push_back(machine_config(entry, problems));
+    MachineConfig& machine = plant.machines.back();
+    plant.wiring.machines.push_back({.machine = entry.id, .period = machine.model.scan_period});
+    add_points(machine, file, plant.wiring, problems);
+  }
+  for (const SafetyLimitEntry& entry : file.safety_limits) {
+    add_safety_limit(entry, plant, problems);
+  }
+  if (problems.empty()) {
+    return plant;
+  }
+  std::stable_sort(problems.begin(), problems.end(),
+                   [](const Problem& a, const Problem& b) { return a.line < b.line; });
+  return tl::unexpected{problems};
+}
+
+tl::expected<PlantConfig, Problems> load_plant(const std::filesystem::path& path) {
+  std::ifstream in{path};
+  std::ostringstream text;
+  if (!in || !(text << in.rdbuf())) {
+    return tl::unexpected{
+        Problems{{.line = 0,
+                  .key = "the file",
+                  .found = {},
+                  .allowed = std::string{"cannot be read: "} + std::strerror(errno)}}};
+  }
+  return read_plant_file(text.str(), path.string())
+      .and_then(plant_from)
+      .map([&path, &text](PlantConfig plant) {
+        plant.text = text.str();
+        if (plant.database.is_relative()) {
+          plant.database = path.parent_path() / plant.database;
+        }
+        return plant;
+      });
+}
+
+}  // namespace lostwork
