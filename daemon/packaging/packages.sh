@@ -1,7 +1,7 @@
 # Sourced by daemon/demo.sh and tests/run.sh: the Debian packages that lostwork is built and tested with.
 
 build_packages="g++ cmake ninja-build pkg-config libboost1.81-dev libmodbus-dev libeigen3-dev libsqlite3-dev
-libexpected-dev libtomlplusplus-dev libhowardhinnant-date-dev libjs-dygraphs tzdata"
+libexpected-dev libtomlplusplus-dev libhowardhinnant-date-dev libjs-dygraphs libsystemd-dev tzdata"
 test_packages="libgtest-dev libgmock-dev libbenchmark-dev chromium chromium-driver clang-format-14 binutils"
 
 # install_missing PACKAGE...: says what is missing and installs it; needs root, or sudo, only when something is.
