@@ -75,6 +75,9 @@ struct Saturation {
 [[nodiscard]] Result<Saturation> saturation_at_T(const Fluid& fluid, double T_K);
 [[nodiscard]] Result<Saturation> saturation_at_p(const Fluid& fluid, double p_Pa);
 
+// By (p, s) where the saturation at that very pressure is known already: half the time.
+[[nodiscard]] Result<State> state(const Fluid& fluid, const GivenPs& given, const Saturation& at_p);
+
 // Every fluid of the program, and one by its name ("R134a", "R718" or "water"); null where there is
 // none.
 [[nodiscard]] std::span<const Fluid* const> fluids();

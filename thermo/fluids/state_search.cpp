@@ -110,30 +110,34 @@ double first_T_K(const Wanted& wanted, const State& from) {
   return wanted.entropy ? from.T_K * std::exp(std::min(gap / cp, 1.0)) : from.T_K + gap / cp;
 }
 
-// Below the critical pressure, where the isobar crosses the two-phase region.
-Result<State> below_critical(const Fluid& fluid, const Wanted& wanted) {
-  const Result<Saturation> line = saturation_at_p(fluid, wanted.p_Pa);
-  if (!line) {
-    if (line.error().code != ReasonCode::outside_fluid) {
-      return tl::unexpected{line.error()};
-    }
-    // Below the saturation pressure at the lowest temperature there is only vapour.
-    return search(fluid, wanted,
-                  {fluid.min_T_K, fluid.max_T_K, 0.8 * fluid.critical_T_K, Branch::vapour});
-  }
-  const double liquid = value_of(wanted, line->liquid);
-  const double vapour = value_of(wanted, line->vapour);
+// Where the isobar crosses the two-phase region.
+Result<State> across(const Fluid& fluid, const Wanted& wanted, const Saturation& line) {
+  const double liquid = value_of(wanted, line.liquid);
+  const double vapour = value_of(wanted, line.vapour);
   if (wanted.value_SI >= liquid && wanted.value_SI <= vapour) {
-    return mixed(*line, (wanted.value_SI - liquid) / (vapour - liquid));
+    return mixed(line, (wanted.value_SI - liquid) / (vapour - liquid));
   }
-  const double boiling_T_K = line->liquid.T_K;
+  const double boiling_T_K = line.liquid.T_K;
   if (wanted.value_SI < liquid) {
     return search(fluid, wanted,
                   {std::min(lowest_T_K(fluid), boiling_T_K), boiling_T_K,
-                   first_T_K(wanted, line->liquid), Branch::liquid});
+                   first_T_K(wanted, line.liquid), Branch::liquid});
   }
   return search(fluid, wanted,
-                {boiling_T_K, fluid.max_T_K, first_T_K(wanted, line->vapour), Branch::vapour});
+                {boiling_T_K, fluid.max_T_K, first_T_K(wanted, line.vapour), Branch::vapour});
+}
+
+Result<State> below_critical(const Fluid& fluid, const Wanted& wanted) {
+  const Result<Saturation> line = saturation_at_p(fluid, wanted.p_Pa);
+  if (line) {
+    return across(fluid, wanted, *line);
+  }
+  if (line.error().code != ReasonCode::outside_fluid) {
+    return tl::unexpected{line.error()};
+  }
+  // Below the saturation pressure at the lowest temperature there is only vapour.
+  return search(fluid, wanted,
+                {fluid.min_T_K, fluid.max_T_K, 0.8 * fluid.critical_T_K, Branch::vapour});
 }
 
 Result<State> on_isobar(const Fluid& fluid, const Wanted& wanted) {
@@ -158,6 +162,13 @@ Result<State> state(const Fluid& fluid, const GivenPh& given) {
 
 Result<State> state(const Fluid& fluid, const GivenPs& given) {
   return on_isobar(fluid, {given.p_Pa, given.s_JkgK, true, "entropy"});
+}
+
+Result<State> state(const Fluid& fluid, const GivenPs& given, const Saturation& at_p) {
+  if (!std::isfinite(given.s_JkgK)) {
+    return refusal(ReasonCode::implausible, "entropy", given.s_JkgK);
+  }
+  return across(fluid, {given.p_Pa, given.s_JkgK, true, "entropy"}, at_p);
 }
 
 }  // namespace lostwork

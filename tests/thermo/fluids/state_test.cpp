@@ -119,6 +119,20 @@ TEST(StateByEntropy, RefusesATemperatureBeyondTheLimits) {
   expect_refused(state(r134a, GivenPs{1e5, 100.0}), ReasonCode::outside_fluid, "entropy");
 }
 
+TEST(StateByEntropy, FindsTheSameWhereTheSaturationIsKnown) {
+  const Saturation line = saturation_at_p(r134a, 900e3).value();
+  for (const double s_JkgK : {1000.0, 1500.0, 1750.0}) {
+    const GivenPs given{900e3, s_JkgK};
+    EXPECT_EQ(state(r134a, given, line).value().h_Jkg, state(r134a, given).value().h_Jkg);
+  }
+}
+
+TEST(StateByEntropy, RefusesWhatIsNotANumberWhereTheSaturationIsKnown) {
+  const Saturation line = saturation_at_p(r134a, 900e3).value();
+  expect_refused(state(r134a, GivenPs{900e3, std::nan("")}, line), ReasonCode::implausible,
+                 "entropy");
+}
+
 TEST(StateByEnthalpy, FindsVapourBelowThePressureOfTheTriplePoint) {
   const State thin = state(r134a, GivenTp{250.0, 100.0}).value();
   const State found = state(r134a, GivenPh{100.0, thin.h_Jkg}).value();
