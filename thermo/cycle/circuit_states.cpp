@@ -144,13 +144,14 @@ Result<Node> throttled(const MachineModel& model, const Node& before, const Boun
 
 // dh = T ds + v dp.
 Result<Number> isentropic_h_Jkg(const MachineModel& model, const Node& suction,
-                                const Number& p_Pa) {
+                                const Boundary& high) {
   const Result<State> at =
-      state(*model.refrigerant, GivenPs{.p_Pa = p_Pa.value, .s_JkgK = suction.s_JkgK.value});
+      state(*model.refrigerant, GivenPs{.p_Pa = high.p_Pa.value, .s_JkgK = suction.s_JkgK.value},
+            high.at);
   if (!at) {
-    return refuse(at.error().code, Role::discharge_pressure, p_Pa.value);
+    return refuse(at.error().code, Role::discharge_pressure, high.p_Pa.value);
   }
-  return chain(at->h_Jkg, at->T_K, suction.s_JkgK, 1.0 / at->rho_kgm3, p_Pa);
+  return chain(at->h_Jkg, at->T_K, suction.s_JkgK, 1.0 / at->rho_kgm3, high.p_Pa);
 }
 
 std::optional<Reason> swapped_pressures(const Inputs& inputs) {
@@ -226,8 +227,8 @@ void fill_states(CircuitStates& states, const MachineModel& model, const Inputs&
           ? combine(vapour_at({Role::evaporator_out_temperature, true, flooded}), lines.low)
           : states.suction;
   states.isentropic_h_Jkg = combine(
-      [&](const Node& from, const Number& p_Pa) { return isentropic_h_Jkg(model, from, p_Pa); },
-      states.suction, inputs[Role::discharge_pressure]);
+      [&](const Node& from, const Boundary& line) { return isentropic_h_Jkg(model, from, line); },
+      states.suction, lines.high);
 }
 
 }  // namespace
