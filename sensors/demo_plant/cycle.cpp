@@ -161,7 +161,7 @@ void add_entropies(const CycleFrame& frame, MachineTruth& truth) {
 }  // namespace
 
 CycleFrame frame(const MachineParameters& machine, const Refrigerant& refrigerant,
-                 const CycleFrameInput& input, const MachineState& state) {
+                 const CycleFrameInput& input, const MachineMemory& state) {
   const Water& water = plant_water();
   CycleFrame f{.machine = &machine,
                .refrigerant = &refrigerant,

@@ -34,7 +34,7 @@ struct CycleFrameInput {
   double capacity;
 };
 [[nodiscard]] CycleFrame frame(const MachineParameters& machine, const Refrigerant& refrigerant,
-                               const CycleFrameInput& input, const MachineState& state);
+                               const CycleFrameInput& input, const MachineMemory& state);
 
 struct Saturations {
   double evaporating_T_K;

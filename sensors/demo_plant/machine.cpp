@@ -243,8 +243,8 @@ void Machine::remember(const MachineTruth& truth, const MachineOrder& order) {
 
 namespace {
 
-MachineState steady_start(const MachineParameters& machine, const MachineInlet& inlet) {
-  MachineState state;
+MachineMemory steady_start(const MachineParameters& machine, const MachineInlet& inlet) {
+  MachineMemory state;
   state.capacity = 0.5;
   state.evaporating_T_K = inlet.cold_in_T_K - 8.0;
   state.condensing_T_K = inlet.hot_in_T_K + 8.0;
@@ -255,7 +255,7 @@ MachineState steady_start(const MachineParameters& machine, const MachineInlet& 
 }
 
 // Takes over what a balanced round says; returns how much the slow temperatures still moved, K.
-double take_over(MachineState& state, const MachineTruth& truth, const CycleTrial& round,
+double take_over(MachineMemory& state, const MachineTruth& truth, const CycleTrial& round,
                  double superheat_set_K) {
   const double starved = std::max(0.0, truth.valve_opening - 1.0);
   const double superheat_K = superheat_set_K + starved_valve_K * starved;
@@ -280,7 +280,7 @@ MachineTruth steady_point(const Machine& machine, const MachineInlet& inlet,
   constexpr double close = 2e-7;
   constexpr double still_K = 1e-5;
   const MachineParameters& parameters = machine.parameters();
-  MachineState state = steady_start(parameters, inlet);
+  MachineMemory state = steady_start(parameters, inlet);
   for (int i = 0; i < most_rounds; ++i) {
     const CycleFrame f =
         frame(parameters, machine.refrigerant(),

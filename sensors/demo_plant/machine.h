@@ -102,7 +102,7 @@ struct MachineTruth {
 };
 
 // What the machine carries from step to step.
-struct MachineState {
+struct MachineMemory {
   bool running = false;
   double capacity = 0.0;
   Seconds since_switch{3600.0};
@@ -134,7 +134,7 @@ class Machine {
   MachineTruth step(const MachineInlet& inlet, const MachineHealth& health,
                     const MachineOrder& order);
 
-  [[nodiscard]] const MachineState& state() const { return state_; }
+  [[nodiscard]] const MachineMemory& state() const { return state_; }
   [[nodiscard]] const MachineParameters& parameters() const { return *parameters_; }
   [[nodiscard]] const Refrigerant& refrigerant() const { return *refrigerant_; }
 
@@ -148,7 +148,7 @@ class Machine {
 
   const MachineParameters* parameters_;
   const Refrigerant* refrigerant_;
-  MachineState state_;
+  MachineMemory state_;
 };
 
 // The steady state in which the machine gives that product heat (> 0), whatever its controls would
