@@ -2,6 +2,7 @@
 
 #include "thermo/fluids/state.h"
 
+#include <algorithm>
 #include <cmath>
 
 namespace lostwork {
@@ -73,9 +74,12 @@ struct VapourPlace {
   bool flooded;
 };
 
+// Readings and saturation lines are rounded: a distance below this is none.
+constexpr double rounding_K = 1e-3;
+
 // Distance from saturation on the right side. Refuses: contradicts, below 0 by more than 2 u.
 Result<Number> on_its_side(const Number& distance_K, const Inputs& inputs, Role role) {
-  if (distance_K.value < -2.0 * inputs.errors.u(distance_K)) {
+  if (distance_K.value < -2.0 * inputs.errors.u(distance_K) - rounding_K) {
     return refuse(ReasonCode::contradicts, role, inputs[role]->value);
   }
   return distance_K;
@@ -100,7 +104,7 @@ Result<Node> vapour(const MachineModel& model, const Inputs& inputs, const Bound
     return tl::unexpected{above_K.error()};
   }
   const Number& T_K = *inputs[place.role];
-  if (above_K->value > (place.flooded ? inputs.errors.u(*above_K) : 0.0)) {
+  if (above_K->value > std::max(rounding_K, place.flooded ? inputs.errors.u(*above_K) : 0.0)) {
     return single_phase_node(*model.refrigerant, T_K, line.p_Pa, place.role);
   }
   return place.at_suction ? nearly_dry(line)
@@ -113,7 +117,7 @@ Result<Node> liquid(const MachineModel& model, const Inputs& inputs, const Bound
     return tl::unexpected{below_K.error()};
   }
   const Number& T_K = *inputs[Role::liquid_temperature];
-  if (below_K->value > inputs.errors.u(*below_K)) {
+  if (below_K->value > std::max(rounding_K, inputs.errors.u(*below_K))) {
     return single_phase_node(*model.refrigerant, T_K, line.p_Pa, Role::liquid_temperature);
   }
   return node(line.at.liquid, *line.at.liquid.single, T_K, line.p_Pa);

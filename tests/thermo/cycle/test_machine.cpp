@@ -40,7 +40,9 @@ Truth truth_of(const Fluid& fluid, const Cycle& cycle) {
   const double ideal = state(fluid, GivenPs{high_Pa, t.suction.s_JkgK}).value().h_Jkg;
   const double h2 = t.suction.h_Jkg + (ideal - t.suction.h_Jkg) / cycle.isentropic_efficiency;
   t.discharge = state(fluid, GivenPh{high_Pa, h2}).value();
-  t.liquid = state(fluid, GivenTp{cycle.condensing_T_K - cycle.subcooling_K, high_Pa}).value();
+  t.liquid = cycle.subcooling_K > 0.0
+                 ? state(fluid, GivenTp{cycle.condensing_T_K - cycle.subcooling_K, high_Pa}).value()
+                 : saturation_at_p(fluid, high_Pa).value().liquid;
   t.valve_out = state(fluid, GivenPh{low_Pa, t.liquid.h_Jkg}).value();
   const double m = cycle.flow_kgs;
   t.power_W = m * (t.discharge.h_Jkg - t.suction.h_Jkg) / (1.0 - cycle.casing_share);
