@@ -3,6 +3,7 @@
 #include <cmath>
 #include <initializer_list>
 #include <limits>
+#include <numbers>
 
 namespace lostwork {
 namespace {
@@ -12,7 +13,7 @@ static_assert(static_cast<std::size_t>(Role::cold_in_temperature) == 0 &&
 
 // Dry saturated vapour may carry liquid: quality 0.98 to 1, all alike likely (engineering
 // judgement, no published figure). The root mean square distance from 1.
-constexpr double suction_quality_u = 0.02 / 1.7320508075688772;
+constexpr double suction_quality_u = 0.02 / std::numbers::sqrt3;
 
 Refusal refuse(ReasonCode code, Role role, double value_SI) {
   return Refusal{
