@@ -40,9 +40,10 @@ void forget_samples(SteadyState& state, std::size_t points) {
 }
 
 void fit_to_model(SteadyState& state, std::size_t points) {
-  if (state.signals.size() != points || state.open.signals.size() != points ||
-      state.joined.size() != points) {
+  if (state.signals.size() != points) {
     state.signals.assign(points, {});
+  }
+  if (state.open.signals.size() != points || state.joined.size() != points) {
     forget_samples(state, points);
   }
 }
