@@ -40,9 +40,9 @@ enum class AlarmPriority : std::uint8_t {
 struct Figure {
   std::string name;  // with its unit: "power_residual_percent"
   double value = 0.0;
-  std::optional<double> u;      // standard uncertainty, in the same unit
-  std::optional<double> limit;  // in the same unit
-  std::string document;         // where the limit comes from; empty where there is none
+  std::optional<double> u = std::nullopt;      // standard uncertainty, in the same unit
+  std::optional<double> limit = std::nullopt;  // in the same unit
+  std::string document = {};  // where the limit comes from; empty where there is none
 
   friend bool operator==(const Figure&, const Figure&) = default;
 };
@@ -68,7 +68,7 @@ struct Alarm {
   AlarmKind kind{};
   AlarmPriority priority{};
   AlarmState state = AlarmState::normal;
-  Instant since{};                      // became active
+  Instant since{};                      // the condition began
   std::optional<Instant> returned;      // the condition ended
   std::optional<Instant> acknowledged;  // somebody said "seen"
   bool chattering = false;              // three times active within a minute (methods.md 7.2)

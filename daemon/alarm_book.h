@@ -25,6 +25,9 @@ struct AlarmSlot {
   static constexpr std::size_t remembered = 3;
 
   Alarm alarm;
+  // Of a lost point or detector: the point; of a lost device: the device; of a set point: the
+  // limit; as an index. None: the rule is gone, or it is a finding's.
+  std::optional<std::uint32_t> subject;
   std::optional<Instant> turning;  // the condition differs from the alarm's state since then
   std::array<Instant, remembered> activations{};  // a ring
   std::uint64_t activated = 0;                    // times
@@ -33,13 +36,17 @@ struct AlarmSlot {
 // How long a point has not been heard.
 struct PointWatch {
   std::optional<Instant> last_good;
-  std::uint32_t missed = 0;  // scans in a row without a usable value
-  std::uint32_t silent = 0;  // scans in a row without any answer
+  std::optional<Instant> missed_since;
+  Quality quality = Quality::good;  // of the last reading
+  std::uint32_t missed = 0;         // scans in a row without a usable value
+  std::uint32_t silent = 0;         // scans in a row without any answer
 };
 
 struct AlarmBook {
   std::vector<AlarmSlot> slots;     // in no order; those of ended findings go when acknowledged
   std::vector<PointWatch> watches;  // one a point of the model
+  std::vector<std::string> devices;
+  std::vector<std::optional<std::uint32_t>> device_of_point;  // index into devices
 };
 
 struct AlarmUpdate {
@@ -57,7 +64,7 @@ struct AlarmInput {
                                      AlarmBook book, const AlarmInput& input);
 
 // Slots and watches for the model's points, devices and limits; those that are there already are
-// kept, those whose rule is gone are dropped.
+// kept. An alarm whose rule is gone returns to normal with the next scan.
 [[nodiscard]] AlarmBook fitted(const MachineModel& model, const AlarmRules& rules, AlarmBook book);
 
 // All that are not normal: danger first, then the newest first.
@@ -101,15 +108,15 @@ void archive(Archive& a, Alarm& s) {
 }
 template <class Archive>
 void archive(Archive& a, AlarmSlot& s) {
-  a(s.alarm, s.turning, s.activations, s.activated);
+  a(s.alarm, s.subject, s.turning, s.activations, s.activated);
 }
 template <class Archive>
 void archive(Archive& a, PointWatch& s) {
-  a(s.last_good, s.missed, s.silent);
+  a(s.last_good, s.missed_since, s.quality, s.missed, s.silent);
 }
 template <class Archive>
 void archive(Archive& a, AlarmBook& s) {
-  a(s.slots, s.watches);
+  a(s.slots, s.watches, s.devices, s.device_of_point);
 }
 
 }  // namespace lostwork
