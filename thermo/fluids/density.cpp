@@ -1,12 +1,20 @@
 #include "thermo/fluids/density.h"
 
+#include "thermo/fluids/ancillary.h"
+#include "thermo/fluids/single_phase.h"
+
+#include <algorithm>
 #include <cmath>
 
 namespace lostwork {
 namespace {
 
 constexpr int most_steps = 100;
-constexpr double close_enough = 1e-10;  // of the density; the step taken last squares it
+// A step of this share of the density may be the last: its square, times about R T / (dp/drho),
+// is what remains; below rounding / (dp/drho) no step gets.
+double close_enough(double reduced_slope) {
+  return std::max(3e-8 * std::min(1.0, reduced_slope), 1e-14 / reduced_slope);
+}
 // Above this share of the critical temperature an isotherm has one unstable region and the critical
 // density lies in it; below, the equations may have several, between the two ancillaries.
 constexpr double one_loop = 0.9;
@@ -34,21 +42,6 @@ Bracket bracket(const Isotherm& isotherm, Branch branch) {
 
 }  // namespace
 
-double ancillary_value(const Ancillary& ancillary, double T_K) {
-  const double log_theta = std::log(1.0 - T_K / ancillary.scale_T_K);
-  double sum = 0.0;
-  for (const IdealPower& row : ancillary.rows) {
-    sum += row.n * std::exp(row.t * log_theta);
-  }
-  switch (ancillary.form) {
-    case Ancillary::Form::exp_tau_sum:
-      return ancillary.y_scale_SI * std::exp(ancillary.scale_T_K / T_K * sum);
-    case Ancillary::Form::exp_sum: return ancillary.y_scale_SI * std::exp(sum);
-    case Ancillary::Form::one_plus_sum: break;
-  }
-  return ancillary.y_scale_SI * (1.0 + sum);
-}
-
 double guessed_rho_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa) {
   const Fluid& fluid = isotherm.fluid();
   const double T_K = isotherm.temperature_K();
@@ -66,6 +59,7 @@ double guessed_rho_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa) {
 Result<double> density_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa,
                             double first_kgm3) {
   auto [low, high] = bracket(isotherm, branch);
+  const double rt_Jkg = isotherm.fluid().gas_constant_JkgK * isotherm.temperature_K();
   double rho = first_kgm3 > low && first_kgm3 < high ? first_kgm3 : 0.5 * (low + high);
   for (int step = 0; step < most_steps; ++step) {
     const Slope slope = isotherm.slope(rho);
@@ -74,7 +68,7 @@ Result<double> density_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa
         stable || branch == Branch::fluid ? slope.p_Pa > p_Pa : branch == Branch::vapour;
     (too_dense ? high : low) = rho;
     double next = rho - (slope.p_Pa - p_Pa) / slope.p_by_rho;
-    if (stable && std::abs(next - rho) <= close_enough * rho) {
+    if (stable && std::abs(next - rho) <= close_enough(slope.p_by_rho / rt_Jkg) * rho) {
       return next;
     }
     if (!stable || !(next > low && next < high)) {
@@ -86,13 +80,9 @@ Result<double> density_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa
     rho = next;
   }
   if (rho > 0.999 * isotherm.fluid().densest_kgm3) {
-    return Refusal{
-        Reason{ReasonCode::outside_fluid, "density", rho}
-    };
+    return refusal(ReasonCode::outside_fluid, "density", rho);
   }
-  return Refusal{
-      Reason{ReasonCode::not_converged, "density", p_Pa}
-  };
+  return refusal(ReasonCode::not_converged, "density", p_Pa);
 }
 
 }  // namespace lostwork

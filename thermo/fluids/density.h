@@ -15,9 +15,6 @@ enum class Branch : unsigned char {
   fluid    // at and above the critical temperature, where the isotherm rises everywhere
 };
 
-// What the ancillary equation says, in its own unit.
-[[nodiscard]] double ancillary_value(const Ancillary& ancillary, double T_K);
-
 // A density to begin with.
 [[nodiscard]] double guessed_rho_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa);
 

@@ -80,9 +80,9 @@ struct Fluid {
   double gas_constant_JkgK;  // as the paper's own equation uses it
   double reducing_T_K;
   double reducing_rho_kgm3;
-  double critical_T_K;  // as published
-  double critical_p_Pa;
-  double critical_rho_kgm3;  // where the equation's own isotherm is flat
+  double critical_T_K;  // of the equation itself, where the first two density derivatives of p
+  double critical_p_Pa;  // vanish: what the papers print differs in the last digits
+  double critical_rho_kgm3;
   double min_T_K;            // limits of the equation as published
   double max_T_K;
   double max_p_Pa;
@@ -91,9 +91,9 @@ struct Fluid {
   PowerTerms residual;
   std::span<const GaussianTerm> gaussian;
   std::span<const NonAnalyticTerm> non_analytic;
-  Ancillary saturation_pressure;   // good to 1 % everywhere below the critical point
-  Ancillary saturated_liquid_rho;  // good to 5 %
-  Ancillary saturated_vapour_rho;  // good to 5 %
+  Ancillary saturation_pressure;   // good to 0.05 % everywhere below the critical point
+  Ancillary saturated_liquid_rho;  // good to 0.2 % below 0.98 of the critical temperature, else 5 %
+  Ancillary saturated_vapour_rho;  // the same
 };
 
 }  // namespace lostwork

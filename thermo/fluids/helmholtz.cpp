@@ -96,20 +96,25 @@ void Isotherm::set_ideal_part() {
 void Isotherm::set_groups() {
   const PowerTerms& terms = fluid_->residual;
   std::array<double, PowerTerms::capacity> powers;  // NOLINT(*-init-variables): filled below
+  powers[0] = 1.0;
   std::size_t count = 0;
   for (const PowerTerms::TauPower& row : terms.powers()) {
-    powers[count] = row.left < 0 ? power(log_tau_, row.t)
-                                 : powers[static_cast<std::size_t>(row.left)] *
-                                       powers[static_cast<std::size_t>(row.right)];
+    powers[count] = row.by_exp
+                        ? power(log_tau_, row.t)
+                        : powers[row.factors[0]] * powers[row.factors[1]] * powers[row.factors[2]];
     ++count;
   }
-  std::fill_n(groups_.begin(), terms.groups().size(), Coefficient{0.0, 0.0, 0.0});
-  for (const PowerTerms::Row& row : terms.rows()) {
-    Coefficient& group = groups_[row.group];
-    const double value = row.n * powers[row.power];
-    group.c += value;
-    group.ct += value * row.t;
-    group.ctt += value * row.t * (row.t - 1.0);
+  count = 0;
+  for (const PowerTerms::Group& group : terms.groups()) {
+    Coefficient sum{0.0, 0.0, 0.0};
+    for (std::size_t i = group.begin; i < group.end; ++i) {
+      const PowerTerms::Row& row = terms.rows()[i];
+      const double value = row.n * powers[row.power];
+      sum.c += value;
+      sum.ct += value * row.t;
+      sum.ctt += value * row.t * (row.t - 1.0);
+    }
+    groups_[count++] = sum;
   }
 }
 
@@ -117,42 +122,39 @@ void Isotherm::set_groups() {
 // d of c delta^d exp(-delta^l) is (d - u), dd is d (d - 1) - 2 d u + u + u^2 - l u.
 template <bool with_tau>
 void Isotherm::add_powers(double delta, Reduced& sum) const {
+  const PowerTerms& terms = fluid_->residual;
   std::array<double, most_powers> powers;  // NOLINT(*-init-variables): filled below
   powers[0] = 1.0;
   powers[1] = delta;
-  const auto highest = static_cast<std::size_t>(fluid_->residual.highest());
-  for (std::size_t k = 2; k <= highest; ++k) {
+  for (std::size_t k = 2; k <= terms.highest(); ++k) {
     powers[k] = powers[k / 2] * powers[k - k / 2];
   }
-  const std::span<const PowerTerms::Group> groups = fluid_->residual.groups();
-  std::size_t i = 0;
-  while (i < groups.size()) {
-    const int l = groups[i].l;
+  for (const PowerTerms::Decay& decay : terms.decays()) {
     Reduced part{};
-    for (; i < groups.size() && groups[i].l == l; ++i) {
+    for (std::size_t i = decay.begin; i < decay.end; ++i) {
+      const PowerTerms::Group& group = terms.groups()[i];
       const Coefficient& of = groups_[i];
-      const double delta_power = powers[static_cast<std::size_t>(groups[i].d)];
-      const double d = groups[i].d;
+      const double delta_power = powers[group.delta_power];
       const double value = of.c * delta_power;
       part.a += value;
-      part.d += value * d;
-      part.dd += value * d * (d - 1.0);
+      part.d += value * group.d;
+      part.dd += value * group.d * (group.d - 1.0);
       if constexpr (with_tau) {
         part.t += of.ct * delta_power;
-        part.dt += of.ct * delta_power * d;
+        part.dt += of.ct * delta_power * group.d;
         part.tt += of.ctt * delta_power;
       }
     }
-    const double delta_l = l > 0 ? powers[static_cast<std::size_t>(l)] : 0.0;
-    const double decay = l > 0 ? std::exp(-delta_l) : 1.0;
-    const double u = l * delta_l;
-    sum.a += decay * part.a;
-    sum.d += decay * (part.d - u * part.a);
-    sum.dd += decay * (part.dd - 2.0 * u * part.d + (u + u * u - l * u) * part.a);
+    const double l = decay.l;
+    const double u = l * powers[decay.delta_power];
+    const double factor = l > 0.0 ? std::exp(-powers[decay.delta_power]) : 1.0;
+    sum.a += factor * part.a;
+    sum.d += factor * (part.d - u * part.a);
+    sum.dd += factor * (part.dd - 2.0 * u * part.d + (u + u * u - l * u) * part.a);
     if constexpr (with_tau) {
-      sum.t += decay * part.t;
-      sum.dt += decay * (part.dt - u * part.t);
-      sum.tt += decay * part.tt;
+      sum.t += factor * part.t;
+      sum.dt += factor * (part.dt - u * part.t);
+      sum.tt += factor * part.tt;
     }
   }
 }
@@ -216,7 +218,7 @@ double Isotherm::second_virial() const {
   double sum = 0.0;
   const std::span<const PowerTerms::Group> groups = fluid_->residual.groups();
   for (std::size_t i = 0; i < groups.size(); ++i) {
-    sum += groups[i].d == 1 ? groups_[i].c : 0.0;
+    sum += groups[i].delta_power == 1 ? groups_[i].c : 0.0;
   }
   return sum / fluid_->reducing_rho_kgm3;
 }
@@ -227,8 +229,8 @@ Slope Isotherm::slope(double rho_kgm3) const {
   add_powers<false>(delta, sum);
   add_gaussians<false>(delta, sum);
   add_non_analytic<false>(delta, sum);
-  const double RT = fluid_->gas_constant_JkgK * T_K_;  // NOLINT(readability-identifier-naming)
-  return {rho_kgm3 * RT * (1.0 + sum.d), RT * (1.0 + 2.0 * sum.d + sum.dd), sum.a};
+  const double rt_Jkg = fluid_->gas_constant_JkgK * T_K_;
+  return {rho_kgm3 * rt_Jkg * (1.0 + sum.d), rt_Jkg * (1.0 + 2.0 * sum.d + sum.dd), sum.a};
 }
 
 Properties Isotherm::properties(double rho_kgm3) const {

@@ -41,36 +41,37 @@ constexpr auto ideal = std::to_array<IdealPower>({
     { -3.92717, -0.75},
 });
 
-// First guesses only: fitted to this equation by CoolProp, an open-source library (MIT licence);
-// no publication.
+// First guesses only, fitted to this equation for this program.
 constexpr auto saturation_pressure = std::to_array<IdealPower>({
-    {0.43314783,  0.845},
-    {-9.0903026,   0.99},
-    { 2.1476074,   1.14},
-    { -1.557687,  2.651},
-    {-3.5020329,  4.507},
-    { 14.958442, 17.235},
+    {-7.7277617, 1.0},
+    { 2.5683012, 1.5},
+    {-2.4525489, 2.0},
+    {-1.8940650, 4.0},
+    {-2.5958123, 5.0},
+    {0.99095697, 7.5},
 });
 constexpr auto liquid_rho = std::to_array<IdealPower>({
-    { 18.772732, 0.673},
-    {-51.499395, 0.994},
-    { 40.793536, 1.257},
-    {  -1481.65, 5.783},
-    { 1600.5344, 5.943},
-    {-67338.524, 19.94},
+    {0.84662604, 1.0 / 3.0},
+    { 7.1903601,       0.5},
+    {-17.919166, 2.0 / 3.0},
+    { 17.649998, 5.0 / 6.0},
+    {-15.373193, 4.0 / 3.0},
+    { 10.594094,       1.5},
 });
 constexpr auto vapour_rho = std::to_array<IdealPower>({
-    {-5.1473862,  0.476},
-    { 5.3461804,  0.966},
-    {-7.6110153,  1.321},
-    {-28.854364,  8.491},
-    {-9.0793061, 13.463},
-    {      64.0, 13.463},
+    {-1.9478594, 1.0 / 3.0},
+    {-1.7051844, 2.0 / 3.0},
+    {-2.3641867,       1.0},
+    { 1.1697412,       2.0},
+    {-3.8583290,       3.0},
+    {-3.0790774,       5.0},
 });
 
-constexpr double critical_T_K = 374.21;  // as published; the guesses are scaled by it
-constexpr double critical_p_Pa = 4059280.0;
-constexpr double critical_rho_kgm3 = 511.9;
+// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+// 374.21 K, 4059.28 kPa and 511.9 kg/m3.
+constexpr double critical_T_K = 374.2119665849513;
+constexpr double critical_p_Pa = 4059276.3737910655;
+constexpr double critical_rho_kgm3 = 511.9451132818318;
 
 }  // namespace
 
@@ -85,9 +86,9 @@ constinit const Fluid r134a{
     .gas_constant_JkgK = 8.314471 / 0.102032,
     .reducing_T_K = 374.18,
     .reducing_rho_kgm3 = 508.0,
-    .critical_T_K = 374.2119665849513,
-    .critical_p_Pa = 4059276.3737910655,
-    .critical_rho_kgm3 = 511.9451132818318,
+    .critical_T_K = critical_T_K,
+    .critical_p_Pa = critical_p_Pa,
+    .critical_rho_kgm3 = critical_rho_kgm3,
     .min_T_K = 169.85,
     .max_T_K = 455.0,
     .max_p_Pa = 70e6,

@@ -86,31 +86,30 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
     { 0.24873, 27.5075105},
 });
 
-// First guesses only: fitted to this equation by CoolProp, an open-source library (MIT licence);
-// no publication.
+// First guesses only, fitted to this equation for this program.
 constexpr auto saturation_pressure = std::to_array<IdealPower>({
-    { -9.7563964,  1.018},
-    {  3.3357601,  1.206},
-    { -1.1002928,  2.327},
-    {  -2.666859,  4.215},
-    {0.020376172,  5.753},
-    {  6.6767211, 14.951},
+    {-7.8635200, 1.0},
+    { 1.8686386, 1.5},
+    {-13.154070, 3.0},
+    { 27.187070, 3.5},
+    {-20.180865, 4.0},
+    { 2.5321606, 6.0},
 });
 constexpr auto liquid_rho = std::to_array<IdealPower>({
-    {0.81570214,  0.276},
-    { 2.0434712,  0.455},
-    {-78.582784,  7.127},
-    { 1026.4274,  9.846},
-    {-2290.5643, 11.707},
-    { 8420.1414, 17.805},
+    { 2.5253104, 1.0 / 3.0},
+    {-2.9677994,       0.5},
+    { 6.6346557, 2.0 / 3.0},
+    {-3.4891739, 5.0 / 6.0},
+    {-1.4553069,       5.0},
+    {-1.8482503,       7.0},
 });
 constexpr auto vapour_rho = std::to_array<IdealPower>({
-    {0.97917493,   0.21},
-    {-2.6190679,  0.262},
-    {-3.9166444,  0.701},
-    {-20.313307,  3.909},
-    { 16.497589,  4.076},
-    { -125.3658, 17.459},
+    {-14.919979,       0.5},
+    { 36.140978, 2.0 / 3.0},
+    {-37.190346, 5.0 / 6.0},
+    { 32.628651, 4.0 / 3.0},
+    {-23.176425,       1.5},
+    {-3.5393984,       4.0},
 });
 
 constexpr double critical_T_K = 647.096;

@@ -3,7 +3,8 @@
 //
 // Three things make it fast. Terms of the same d and l become one coefficient as soon as tau is
 // known; terms of the same l share one exp(-delta^l); each different tau^t is made once, from two
-// others where the exponents add up (tau^6 = tau^3 tau^3) and by exp(t ln(tau)) where they do not.
+// or three others where the exponents add up (tau^22 = tau^10 tau^10 tau^2) and by exp(t ln(tau))
+// where they do not.
 #pragma once
 
 #include <algorithm>
@@ -24,67 +25,66 @@ struct HelmholtzTerm {
 
 class PowerTerms {
  public:
-  static constexpr std::size_t capacity = 64;
+  static constexpr std::size_t capacity = 65;  // of rows; one more power than exponents
 
   struct TauPower {
     double t;
-    int left;  // tau^t = power[left] power[right]; left < 0: by exp
-    int right;
-  };
-  struct Group {  // all terms of one delta^d exp(-delta^l); sorted by l, then d
-    int d;
-    int l;
+    bool by_exp;
+    std::array<std::size_t, 3> factors;  // tau^t is the product of these earlier powers
   };
   struct Row {
     double n;
     double t;
     std::size_t power;
-    std::size_t group;
+  };
+  struct Group {  // all terms of one delta^d exp(-delta^l): rows [begin, end)
+    double d;
+    std::size_t delta_power;  // d again
+    std::size_t begin;
+    std::size_t end;
+  };
+  struct Decay {  // all terms of one exp(-delta^l): groups [begin, end)
+    double l;
+    std::size_t delta_power;  // l again
+    std::size_t begin;
+    std::size_t end;
   };
 
   // Throws where a row does not fit (too many rows, d < 1, l < 0): at compile time, an error there.
   constexpr explicit PowerTerms(std::span<const HelmholtzTerm> terms) {
-    for (const HelmholtzTerm& term : terms) {
-      if (row_count_ == capacity || term.d < 1 || term.l < 0) {
-        throw std::invalid_argument("a row of an equation of state");
-      }
-      add_group(term);
-      add_power(term.t);
-      ++row_count_;
-      highest_ = std::max({highest_, term.d, term.l});
+    if (terms.size() > capacity) {
+      throw std::invalid_argument("too many rows in an equation of state");
     }
-    std::sort(groups_.begin(), groups_.begin() + to_difference(group_count_),
-              [](const Group& a, const Group& b) { return a.l != b.l ? a.l < b.l : a.d < b.d; });
-    std::sort(powers_.begin(), powers_.begin() + to_difference(power_count_),
-              [](const TauPower& a, const TauPower& b) { return a.t < b.t; });
-    chain_powers();
-    for (std::size_t i = 0; i < row_count_; ++i) {
-      rows_[i] = {terms[i].n, terms[i].t, power_of(terms[i].t), group_of(terms[i])};
+    std::array<HelmholtzTerm, capacity> sorted{};
+    std::copy(terms.begin(), terms.end(), sorted.begin());
+    std::sort(sorted.begin(), sorted.begin() + to_difference(terms.size()),
+              [](const HelmholtzTerm& a, const HelmholtzTerm& b) {
+                return a.l != b.l ? a.l < b.l : a.d < b.d;
+              });
+    set_powers(terms);
+    for (const HelmholtzTerm& term : std::span{sorted}.first(terms.size())) {
+      add(term);
     }
   }
 
   [[nodiscard]] constexpr std::span<const TauPower> powers() const {
     return std::span{powers_}.first(power_count_);
   }
-  [[nodiscard]] constexpr std::span<const Group> groups() const {
-    return std::span{groups_}.first(group_count_);
-  }
   [[nodiscard]] constexpr std::span<const Row> rows() const {
     return std::span{rows_}.first(row_count_);
   }
-  // The highest power of delta that any group needs.
-  [[nodiscard]] constexpr int highest() const { return highest_; }
+  [[nodiscard]] constexpr std::span<const Group> groups() const {
+    return std::span{groups_}.first(group_count_);
+  }
+  [[nodiscard]] constexpr std::span<const Decay> decays() const {
+    return std::span{decays_}.first(decay_count_);
+  }
+  // The highest power of delta that any term needs.
+  [[nodiscard]] constexpr std::size_t highest() const { return highest_; }
 
  private:
   static constexpr std::ptrdiff_t to_difference(std::size_t count) {
     return static_cast<std::ptrdiff_t>(count);
-  }
-  [[nodiscard]] constexpr std::size_t group_of(const HelmholtzTerm& term) const {
-    std::size_t i = 0;
-    while (i < group_count_ && (groups_[i].d != term.d || groups_[i].l != term.l)) {
-      ++i;
-    }
-    return i;
   }
   [[nodiscard]] constexpr std::size_t power_of(double t) const {
     std::size_t i = 0;
@@ -93,35 +93,56 @@ class PowerTerms {
     }
     return i;
   }
-  constexpr void add_group(const HelmholtzTerm& term) {
-    if (group_of(term) == group_count_) {
-      groups_[group_count_++] = {term.d, term.l};
+  constexpr void set_powers(std::span<const HelmholtzTerm> terms) {
+    powers_[power_count_++] = {0.0, false, {}};  // the third factor of a product of two
+    for (const HelmholtzTerm& term : terms) {
+      if (power_of(term.t) == power_count_) {
+        powers_[power_count_++] = {term.t, true, {}};
+      }
     }
-  }
-  constexpr void add_power(double t) {
-    if (power_of(t) == power_count_) {
-      powers_[power_count_++] = {t, -1, -1};
-    }
-  }
-  constexpr void chain_powers() {
-    for (std::size_t i = 0; i < power_count_; ++i) {
-      for (std::size_t left = 0; left < i; ++left) {
-        const std::size_t right = power_of(powers_[i].t - powers_[left].t);
+    std::sort(powers_.begin() + 1, powers_.begin() + to_difference(power_count_),
+              [](const TauPower& a, const TauPower& b) { return a.t < b.t; });
+    for (std::size_t i = 1; i < power_count_; ++i) {
+      for (std::size_t first = 0; first < i * i; ++first) {
+        const std::size_t left = first / i;
+        const std::size_t middle = first % i;
+        const std::size_t right = power_of(powers_[i].t - powers_[left].t - powers_[middle].t);
         if (right < i) {
-          powers_[i].left = static_cast<int>(left);
-          powers_[i].right = static_cast<int>(right);
+          powers_[i].by_exp = false;
+          powers_[i].factors = {left, middle, right};
+          break;
         }
       }
     }
   }
+  constexpr void add(const HelmholtzTerm& term) {
+    if (term.d < 1 || term.l < 0) {
+      throw std::invalid_argument("a row of an equation of state");
+    }
+    const auto d = static_cast<std::size_t>(term.d);
+    const auto l = static_cast<std::size_t>(term.l);
+    const bool new_decay = decay_count_ == 0 || decays_[decay_count_ - 1].delta_power != l;
+    if (new_decay) {
+      decays_[decay_count_++] = {static_cast<double>(term.l), l, group_count_, group_count_};
+    }
+    if (new_decay || groups_[group_count_ - 1].delta_power != d) {
+      groups_[group_count_++] = {static_cast<double>(term.d), d, row_count_, row_count_};
+    }
+    rows_[row_count_++] = {term.n, term.t, power_of(term.t)};
+    groups_[group_count_ - 1].end = row_count_;
+    decays_[decay_count_ - 1].end = group_count_;
+    highest_ = std::max({highest_, d, l});
+  }
 
   std::array<TauPower, capacity> powers_{};
-  std::array<Group, capacity> groups_{};
   std::array<Row, capacity> rows_{};
+  std::array<Group, capacity> groups_{};
+  std::array<Decay, capacity> decays_{};
   std::size_t power_count_ = 0;
-  std::size_t group_count_ = 0;
   std::size_t row_count_ = 0;
-  int highest_ = 0;
+  std::size_t group_count_ = 0;
+  std::size_t decay_count_ = 0;
+  std::size_t highest_ = 0;
 };
 
 }  // namespace lostwork

@@ -1,7 +1,10 @@
 #include "thermo/fluids/saturation.h"
 
+#include "thermo/fluids/ancillary.h"
 #include "thermo/fluids/density.h"
+#include "thermo/fluids/single_phase.h"
 
+#include <algorithm>
 #include <cmath>
 #include <optional>
 
@@ -9,26 +12,36 @@ namespace lostwork {
 namespace {
 
 constexpr int most_steps = 40;
-constexpr double close_enough = 1e-9;  // of both densities; the step taken last squares it
 
 Refusal not_converged(double T_K) {
-  return Refusal{
-      Reason{ReasonCode::not_converged, "saturation", T_K}
-  };
+  return refusal(ReasonCode::not_converged, "saturation", T_K);
 }
 
-// alphar + delta alphar_delta + ln(rho): the Gibbs energy over R T, but for what depends on T
-// alone.
-double gibbs(const Isotherm& isotherm, const Slope& slope, double rho_kgm3) {
-  const double RT = isotherm.fluid().gas_constant_JkgK *
-                    isotherm.temperature_K();  // NOLINT(readability-identifier-naming)
-  return slope.a + slope.p_Pa / (rho_kgm3 * RT) + std::log(rho_kgm3);
+// A step of this share of both densities may be the last: its square, times about 5 over the
+// distance, is what remains; below rounding over the distance no step gets.
+double close_enough(const Fluid& fluid, double T_K) {
+  const double distance = std::max(1.0 - T_K / fluid.critical_T_K, 1e-12);
+  return std::max(1e-7 * std::sqrt(distance), 1e-14 / distance);
+}
+
+// The densities alone are guessed: Newton's method asks for no pressure to begin with.
+TwoPhases guessed_phases(const Fluid& fluid, double T_K, double p_Pa) {
+  return {T_K, p_Pa, ancillary_value(fluid.saturated_liquid_rho, T_K),
+          ancillary_value(fluid.saturated_vapour_rho, T_K)};
+}
+
+// The gap between the Gibbs energies of the liquid and the vapour, J/kg: g / (R T) is alphar +
+// delta alphar_delta + ln(rho), but for what depends on T alone.
+double gibbs_gap(const Isotherm& isotherm, const Slope& liquid, const Slope& vapour,
+                 const TwoPhases& at) {
+  const double rt_Jkg = isotherm.fluid().gas_constant_JkgK * isotherm.temperature_K();
+  return rt_Jkg * (liquid.a - vapour.a + std::log(at.liquid_kgm3 / at.vapour_kgm3)) +
+         liquid.p_Pa / at.liquid_kgm3 - vapour.p_Pa / at.vapour_kgm3;
 }
 
 // One common pressure change y moves both phases: dG = dp / (rho R T) along an isotherm.
 std::optional<TwoPhases> newton(const Isotherm& isotherm, TwoPhases at) {
-  const double RT = isotherm.fluid().gas_constant_JkgK *
-                    isotherm.temperature_K();  // NOLINT(readability-identifier-naming)
+  const double close = close_enough(isotherm.fluid(), at.T_K);
   for (int step = 0; step < most_steps; ++step) {
     const Slope liquid = isotherm.slope(at.liquid_kgm3);
     const Slope vapour = isotherm.slope(at.vapour_kgm3);
@@ -36,10 +49,9 @@ std::optional<TwoPhases> newton(const Isotherm& isotherm, TwoPhases at) {
       return std::nullopt;
     }
     const double p_gap = liquid.p_Pa - vapour.p_Pa;
-    const double gibbs_gap =
-        RT * (gibbs(isotherm, liquid, at.liquid_kgm3) - gibbs(isotherm, vapour, at.vapour_kgm3));
+    const double g_gap = gibbs_gap(isotherm, liquid, vapour, at);
     const double y =
-        (p_gap / at.liquid_kgm3 - gibbs_gap) / (1.0 / at.liquid_kgm3 - 1.0 / at.vapour_kgm3);
+        (p_gap / at.liquid_kgm3 - g_gap) / (1.0 / at.liquid_kgm3 - 1.0 / at.vapour_kgm3);
     const double vapour_step = y / vapour.p_by_rho;
     const double liquid_step = (y - p_gap) / liquid.p_by_rho;
     if (!(std::abs(vapour_step) < 0.5 * at.vapour_kgm3 &&
@@ -52,8 +64,8 @@ std::optional<TwoPhases> newton(const Isotherm& isotherm, TwoPhases at) {
     if (!(at.liquid_kgm3 > at.vapour_kgm3 * (1.0 + 1e-6))) {
       return std::nullopt;
     }
-    if (std::abs(vapour_step) <= close_enough * at.vapour_kgm3 &&
-        std::abs(liquid_step) <= close_enough * at.liquid_kgm3) {
+    if (std::abs(vapour_step) <= close * at.vapour_kgm3 &&
+        std::abs(liquid_step) <= close * at.liquid_kgm3) {
       return at;
     }
   }
@@ -82,8 +94,6 @@ double spinodal_kgm3(const Isotherm& isotherm, bool liquid) {
 // Near the critical point, where the first guesses are poor: a pressure between those of the two
 // spinodals, by Newton's method on the difference of the Gibbs energies, dg/dp = v.
 std::optional<TwoPhases> bracketed(const Isotherm& isotherm) {
-  const double RT = isotherm.fluid().gas_constant_JkgK *
-                    isotherm.temperature_K();  // NOLINT(readability-identifier-naming)
   TwoPhases at{isotherm.temperature_K(), 0.0, spinodal_kgm3(isotherm, true),
                spinodal_kgm3(isotherm, false)};
   double low = std::max(isotherm.slope(at.liquid_kgm3).p_Pa, 0.0);
@@ -97,8 +107,7 @@ std::optional<TwoPhases> bracketed(const Isotherm& isotherm) {
     }
     at.liquid_kgm3 = *liquid;
     at.vapour_kgm3 = *vapour;
-    const double gap = RT * (gibbs(isotherm, isotherm.slope(*liquid), *liquid) -
-                             gibbs(isotherm, isotherm.slope(*vapour), *vapour));
+    const double gap = gibbs_gap(isotherm, isotherm.slope(*liquid), isotherm.slope(*vapour), at);
     (gap > 0.0 ? low : high) = at.p_Pa;
     double next = at.p_Pa - gap / (1.0 / *liquid - 1.0 / *vapour);
     if (!(next > low && next < high)) {
@@ -113,30 +122,6 @@ std::optional<TwoPhases> bracketed(const Isotherm& isotherm) {
   return std::nullopt;
 }
 
-// The temperature at which the ancillary equation gives this pressure: ln(p) against 1/T is nearly
-// a straight line.
-double guessed_T_K(const Fluid& fluid, double p_Pa) {
-  const double highest_T_K = std::min(fluid.critical_T_K, fluid.saturation_pressure.scale_T_K);
-  const double wanted = std::log(p_Pa);
-  double inverse = (1.0 + std::log(fluid.critical_p_Pa / p_Pa) / 7.0) / highest_T_K;
-  const double least = (1.0 + 1e-9) / highest_T_K;
-  for (int step = 0; step < 3; ++step) {
-    const double T_K = 1.0 / inverse;
-    const double near_T_K = 0.999 * T_K;
-    const double here = std::log(ancillary_value(fluid.saturation_pressure, T_K));
-    const double below = std::log(ancillary_value(fluid.saturation_pressure, near_T_K));
-    inverse += (wanted - here) * (1.0 / near_T_K - inverse) / (below - here);
-    inverse = std::max(inverse, least);
-  }
-  return 1.0 / inverse;
-}
-
-TwoPhases guessed_phases(const Fluid& fluid, double T_K) {
-  return {T_K, ancillary_value(fluid.saturation_pressure, T_K),
-          ancillary_value(fluid.saturated_liquid_rho, T_K),
-          ancillary_value(fluid.saturated_vapour_rho, T_K)};
-}
-
 // Temperature and both densities at once: dg = v dp - s dT in each phase.
 std::optional<TwoPhases> newton_at_p(const Fluid& fluid, double p_Pa, TwoPhases at) {
   for (int step = 0; step < 10; ++step) {
@@ -148,24 +133,23 @@ std::optional<TwoPhases> newton_at_p(const Fluid& fluid, double p_Pa, TwoPhases 
     }
     const double liquid_gap = p_Pa - liquid.p_Pa;
     const double vapour_gap = p_Pa - vapour.p_Pa;
-    const double gibbs_gap =
+    const double g_gap =
         (vapour.h_Jkg - at.T_K * vapour.s_JkgK) - (liquid.h_Jkg - at.T_K * liquid.s_JkgK);
-    const double T_step =  // NOLINT(readability-identifier-naming): a temperature
-        (gibbs_gap + vapour_gap / at.vapour_kgm3 - liquid_gap / at.liquid_kgm3) /
-        (vapour.s_JkgK - liquid.s_JkgK);
-    const double liquid_step = (liquid_gap - liquid.p_by_T * T_step) / liquid.p_by_rho;
-    const double vapour_step = (vapour_gap - vapour.p_by_T * T_step) / vapour.p_by_rho;
-    if (!(std::abs(T_step) < 0.05 * at.T_K && std::abs(vapour_step) < 0.5 * at.vapour_kgm3 &&
+    const double step_K = (g_gap + vapour_gap / at.vapour_kgm3 - liquid_gap / at.liquid_kgm3) /
+                          (vapour.s_JkgK - liquid.s_JkgK);
+    const double liquid_step = (liquid_gap - liquid.p_by_T * step_K) / liquid.p_by_rho;
+    const double vapour_step = (vapour_gap - vapour.p_by_T * step_K) / vapour.p_by_rho;
+    if (!(std::abs(step_K) < 0.05 * at.T_K && std::abs(vapour_step) < 0.5 * at.vapour_kgm3 &&
           std::abs(liquid_step) < 0.2 * at.liquid_kgm3)) {
       return std::nullopt;
     }
-    at = {at.T_K + T_step, p_Pa, at.liquid_kgm3 + liquid_step, at.vapour_kgm3 + vapour_step};
+    at = {at.T_K + step_K, p_Pa, at.liquid_kgm3 + liquid_step, at.vapour_kgm3 + vapour_step};
     if (!(at.liquid_kgm3 > at.vapour_kgm3 * (1.0 + 1e-6)) || !(at.T_K < fluid.critical_T_K)) {
       return std::nullopt;
     }
-    if (std::abs(T_step) <= close_enough * at.T_K &&
-        std::abs(vapour_step) <= close_enough * at.vapour_kgm3 &&
-        std::abs(liquid_step) <= close_enough * at.liquid_kgm3) {
+    const double close = close_enough(fluid, at.T_K);
+    if (std::abs(step_K) <= close * at.T_K && std::abs(vapour_step) <= close * at.vapour_kgm3 &&
+        std::abs(liquid_step) <= close * at.liquid_kgm3) {
       return at;
     }
   }
@@ -201,6 +185,20 @@ Result<TwoPhases> halved_at_p(const Fluid& fluid, double p_Pa, double guess_T_K)
 
 }  // namespace
 
+TwoPhases guessed_phases_at_p(const Fluid& fluid, double p_Pa) {
+  // ln(p) against 1/T is nearly a straight line, and its slope nearly that of all fluids: 7.6 in
+  // reduced units; two steps of Newton's method on the ancillary do the rest.
+  const double highest_T_K = std::min(fluid.critical_T_K, fluid.saturation_pressure.scale_T_K);
+  const double wanted = std::log(p_Pa / fluid.saturation_pressure.y_scale_SI);
+  const double least = (1.0 + 1e-9) / highest_T_K;
+  double inverse = std::max((1.0 - wanted / 7.6) / highest_T_K, least);
+  for (int step = 0; step < 2; ++step) {
+    const LogAncillary here = log_ancillary(fluid.saturation_pressure, 1.0 / inverse);
+    inverse = std::max(inverse + (wanted - here.log_value) / here.by_inverse_T, least);
+  }
+  return guessed_phases(fluid, 1.0 / inverse, p_Pa);
+}
+
 double lowest_T_K(const Fluid& fluid) {
   return fluid.min_T_K * (1.0 - 1e-9);
 }
@@ -209,12 +207,10 @@ Result<TwoPhases> two_phases(const Isotherm& isotherm) {
   const Fluid& fluid = isotherm.fluid();
   const double T_K = isotherm.temperature_K();
   if (!(T_K < fluid.critical_T_K)) {
-    return Refusal{
-        Reason{ReasonCode::outside_fluid, "temperature", T_K}
-    };
+    return refusal(ReasonCode::outside_fluid, "temperature", T_K);
   }
   if (T_K < fluid.saturation_pressure.scale_T_K) {
-    const auto found = newton(isotherm, guessed_phases(fluid, T_K));
+    const auto found = newton(isotherm, guessed_phases(fluid, T_K, 0.0));
     if (found) {
       return *found;
     }
@@ -229,23 +225,17 @@ Result<TwoPhases> two_phases(const Isotherm& isotherm) {
 
 Result<TwoPhases> two_phases_at_p(const Fluid& fluid, double p_Pa) {
   if (!(p_Pa < fluid.critical_p_Pa)) {
-    return Refusal{
-        Reason{ReasonCode::outside_fluid, "pressure", p_Pa}
-    };
+    return refusal(ReasonCode::outside_fluid, "pressure", p_Pa);
   }
-  const double guess_T_K = guessed_T_K(fluid, p_Pa);
-  if (!(guess_T_K > 0.99 * fluid.min_T_K)) {
-    return Refusal{
-        Reason{ReasonCode::outside_fluid, "pressure", p_Pa}
-    };
+  const TwoPhases guess = guessed_phases_at_p(fluid, p_Pa);
+  if (!(guess.T_K > 0.99 * fluid.min_T_K)) {
+    return refusal(ReasonCode::outside_fluid, "pressure", p_Pa);
   }
-  const auto quick = newton_at_p(fluid, p_Pa, guessed_phases(fluid, guess_T_K));
+  const auto quick = newton_at_p(fluid, p_Pa, guess);
   const Result<TwoPhases> found =
-      quick ? Result<TwoPhases>{*quick} : halved_at_p(fluid, p_Pa, guess_T_K);
+      quick ? Result<TwoPhases>{*quick} : halved_at_p(fluid, p_Pa, guess.T_K);
   if (found && !(found->T_K >= lowest_T_K(fluid))) {
-    return Refusal{
-        Reason{ReasonCode::outside_fluid, "pressure", p_Pa}
-    };
+    return refusal(ReasonCode::outside_fluid, "pressure", p_Pa);
   }
   return found;
 }

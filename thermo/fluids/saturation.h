@@ -17,6 +17,9 @@ struct TwoPhases {
   double vapour_kgm3;
 };
 
+// A first guess, as good as Fluid says of its ancillaries. p below the critical pressure.
+[[nodiscard]] TwoPhases guessed_phases_at_p(const Fluid& fluid, double p_Pa);
+
 // Refuses: outside_fluid (at or above the critical temperature), not_converged.
 [[nodiscard]] Result<TwoPhases> two_phases(const Isotherm& isotherm);
 

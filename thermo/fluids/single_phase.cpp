@@ -37,27 +37,32 @@ std::optional<Reason> refused_p(const Fluid& fluid, double p_Pa) {
   return std::nullopt;
 }
 
-Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa, double rho_kgm3) {
-  const double T_K = isotherm.temperature_K();
-  const Properties at = isotherm.properties(rho_kgm3);
-  const double expansion_T = T_K / rho_kgm3 * at.p_by_T / at.p_by_rho;
-  const bool whole = std::isfinite(at.h_Jkg) && std::isfinite(at.s_JkgK) &&
-                     std::isfinite(at.cp_JkgK) && std::isfinite(at.sound_speed_w) &&
-                     std::isfinite(expansion_T);
-  if (!whole) {
-    return refusal(ReasonCode::not_converged, "state", T_K);
-  }
-  return State{
+State state_of(const Properties& at, Phase phase, const GivenTp& given, double rho_kgm3) {
+  return {
       .phase = phase,
-      .T_K = T_K,
-      .p_Pa = p_Pa,
+      .T_K = given.T_K,
+      .p_Pa = given.p_Pa,
       .rho_kgm3 = rho_kgm3,
       .h_Jkg = at.h_Jkg,
       .s_JkgK = at.s_JkgK,
       .quality = std::nullopt,
-      .single = SinglePhase{
-                            .cp_JkgK = at.cp_JkgK, .sound_speed_w = at.sound_speed_w, .expansion_T = expansion_T}
+      .single = SinglePhase{.cp_JkgK = at.cp_JkgK,
+                            .sound_speed_w = at.sound_speed_w,
+                            .expansion_T = given.T_K / rho_kgm3 * at.p_by_T / at.p_by_rho}
   };
+}
+
+Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa, double rho_kgm3) {
+  const Properties at = isotherm.properties(rho_kgm3);
+  const State state = state_of(at, phase, {isotherm.temperature_K(), p_Pa}, rho_kgm3);
+  const bool whole = std::isfinite(state.h_Jkg) && std::isfinite(state.s_JkgK) &&
+                     std::isfinite(state.single->cp_JkgK) &&
+                     std::isfinite(state.single->sound_speed_w) &&
+                     std::isfinite(state.single->expansion_T);
+  if (!whole) {
+    return refusal(ReasonCode::not_converged, "state", state.T_K);
+  }
+  return state;
 }
 
 Result<Saturation> saturation_of(const Isotherm& isotherm, const TwoPhases& at) {

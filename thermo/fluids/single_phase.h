@@ -18,6 +18,10 @@ namespace lostwork {
 [[nodiscard]] std::optional<Reason> refused_T(const Fluid& fluid, double T_K);
 [[nodiscard]] std::optional<Reason> refused_p(const Fluid& fluid, double p_Pa);
 
+// The state of these properties, without a quality. The pressure is the given one.
+[[nodiscard]] State state_of(const Properties& at, Phase phase, const GivenTp& given,
+                             double rho_kgm3);
+
 // Refuses: not_converged (a property is not finite).
 [[nodiscard]] Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa,
                                          double rho_kgm3);

@@ -1,5 +1,6 @@
 #include "thermo/fluids/state.h"
 
+#include "thermo/fluids/ancillary.h"
 #include "thermo/fluids/density.h"
 #include "thermo/fluids/single_phase.h"
 
@@ -11,12 +12,15 @@ namespace {
 
 // The ancillary for the saturation pressure is better than this everywhere; a pressure further away
 // from it is on the side that it shows.
-constexpr double sure_side = 0.01;
+constexpr double sure_side = 0.001;
 
 // Liquid or vapour below the critical temperature.
 Result<Phase> side(const Isotherm& isotherm, double p_Pa) {
   const Fluid& fluid = isotherm.fluid();
   const double T_K = isotherm.temperature_K();
+  if (p_Pa >= fluid.critical_p_Pa) {
+    return Phase::liquid;
+  }
   if (T_K < fluid.saturation_pressure.scale_T_K) {
     const double guess_Pa = ancillary_value(fluid.saturation_pressure, T_K);
     if (p_Pa > (1.0 + sure_side) * guess_Pa) {

@@ -1,22 +1,18 @@
 // States by pressure and enthalpy or entropy: the temperature is searched along the isobar.
 #include "thermo/fluids/density.h"
+#include "thermo/fluids/quick_search.h"
 #include "thermo/fluids/single_phase.h"
 
+#include <algorithm>
 #include <cmath>
+#include <optional>
 
 namespace lostwork {
 namespace {
 
 constexpr int most_steps = 100;
-constexpr double close_enough = 1e-9;  // of the temperature; the step taken last squares it
-
-// What is wanted on the isobar, and the words for a refusal.
-struct Wanted {
-  double p_Pa;
-  double value_SI;
-  bool entropy;
-  std::string_view blame;
-};
+constexpr double good_heat = 1e-11;
+constexpr double worst_heat = 1e-7;
 
 double value_of(const Wanted& wanted, const State& state) {
   return wanted.entropy ? state.s_JkgK : state.h_Jkg;
@@ -71,6 +67,8 @@ Result<State> probe(const Fluid& fluid, const Wanted& wanted, const Span& span, 
   });
 }
 
+// Takes no state whose value misses the wanted one by more than the rounding leaves: near the
+// critical point that is worst_heat of R T, everywhere else good_heat.
 Result<State> search(const Fluid& fluid, const Wanted& wanted, Span span) {
   const Span whole = span;
   Ends tried;
@@ -82,23 +80,22 @@ Result<State> search(const Fluid& fluid, const Wanted& wanted, Span span) {
       return at;
     }
     const double gap = value_of(wanted, *at) - wanted.value_SI;
-    const double slope = wanted.entropy ? at->single->cp_JkgK / T_K : at->single->cp_JkgK;
-    const double T_step = -gap / slope;  // NOLINT(readability-identifier-naming): a temperature
-    if (std::abs(T_step) <= 1e-13 * T_K) {
+    const double heat = wanted.entropy ? gap * T_K : gap;
+    const double step_K = -heat / at->single->cp_JkgK;
+    const bool at_end =
+        (T_K == whole.low_T_K && heat > 0.0) || (T_K == whole.high_T_K && heat < 0.0);
+    const bool last = at_end || !(span.high_T_K - span.low_T_K > 1e-14 * T_K);
+    const double share = std::abs(heat) / (fluid.gas_constant_JkgK * T_K);
+    if (share <= (last ? worst_heat : good_heat)) {
       return at;
     }
-    if ((T_K == whole.low_T_K && gap > 0.0) || (T_K == whole.high_T_K && gap < 0.0)) {
-      if (std::abs(T_step) <= 1e-9 * T_K) {
-        return at;
-      }
-      return refusal(ReasonCode::outside_fluid, wanted.blame, wanted.value_SI);
+    if (last) {
+      return refusal(at_end ? ReasonCode::outside_fluid : ReasonCode::not_converged, wanted.blame,
+                     wanted.value_SI);
     }
     (gap > 0.0 ? span.high_T_K : span.low_T_K) = T_K;
-    const double next_T_K = inside(span, T_K + T_step, tried);
+    const double next_T_K = inside(span, T_K + step_K, tried);
     first_kgm3 = at->rho_kgm3 * (1.0 - at->single->expansion_T * (next_T_K - T_K) / T_K);
-    if (std::abs(next_T_K - T_K) <= close_enough * T_K) {
-      return probe(fluid, wanted, span, next_T_K, first_kgm3);
-    }
     T_K = next_T_K;
   }
   return refusal(ReasonCode::not_converged, wanted.blame, wanted.value_SI);
@@ -148,7 +145,8 @@ Result<State> on_isobar(const Fluid& fluid, const Wanted& wanted) {
     return refusal(ReasonCode::implausible, wanted.blame, wanted.value_SI);
   }
   if (wanted.p_Pa < fluid.critical_p_Pa) {
-    return below_critical(fluid, wanted);
+    const std::optional<State> quick = quick_state(fluid, wanted);
+    return quick ? Result<State>{*quick} : below_critical(fluid, wanted);
   }
   return search(fluid, wanted,
                 {lowest_T_K(fluid), fluid.max_T_K, fluid.critical_T_K, Branch::liquid});

@@ -140,10 +140,17 @@ TEST(StateByEnthalpy, FindsVapourBelowThePressureOfTheTriplePoint) {
   EXPECT_NEAR(found.T_K, 250.0, 1e-8);
 }
 
-TEST(StateByEnthalpy, SaysNotConvergedRatherThanGuessing) {
-  // 1e-8 below the critical pressure the two phases cannot be told apart in double precision.
-  const auto found = state(r134a, GivenPh{r134a.critical_p_Pa * (1.0 - 1e-8), 390e3});
-  expect_refused(found, ReasonCode::not_converged, "saturation");
+TEST(StateByEnthalpy, HasAnAnswerOrAReasonBesideTheCriticalPoint) {
+  // There the two phases differ by less than double precision can tell: a refusal says so, an
+  // answer has what was asked for.
+  for (const double share : {1e-6, 1e-7, 3e-8, 1e-8, 1e-9, 1e-10}) {
+    const auto found = state(r134a, GivenPh{r134a.critical_p_Pa * (1.0 - share), 390e3});
+    if (found) {
+      EXPECT_NEAR(found->h_Jkg, 390e3, 1e-3) << share;
+    } else {
+      EXPECT_EQ(found.error().code, ReasonCode::not_converged) << share;
+    }
+  }
 }
 
 TEST(FluidNamed, KnowsWaterByBothNames) {
