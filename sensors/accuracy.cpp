@@ -11,7 +11,7 @@ namespace {
 struct Pt100Row {
   std::string_view name;
   double fixed_K;
-  double per_degC_K;
+  double per_degree_K;
 };
 
 constexpr std::array<Pt100Row, 4> pt100_rows{
@@ -32,8 +32,8 @@ struct ComponentU {
 
   double operator()(Pt100Class grade) const {
     const Pt100Row& row = pt100_rows.at(static_cast<std::size_t>(grade));
-    const double t_degC = from_SI(Unit::degC, to_SI(unit, value, 0.0), 0.0);
-    return (row.fixed_K + row.per_degC_K * std::abs(t_degC)) * rectangular;
+    const double t = from_SI(Unit::degC, to_SI(unit, value, 0.0), 0.0);  // the standard's letter
+    return (row.fixed_K + row.per_degree_K * std::abs(t)) * rectangular;
   }
   double operator()(const AccuracyLimit& part) const { return in_SI(part.limit) * rectangular; }
   double operator()(const PercentOfReading& part) const {

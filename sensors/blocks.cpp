@@ -35,24 +35,35 @@ struct Best {
   std::size_t first = 0;
 };
 
+// How many of the ordered needs from `first` on can be in one block, and where each such block
+// ends.
+std::vector<std::uint32_t> ends_of_blocks(std::span<const RegisterNeed> needs,
+                                          std::span<const std::size_t> order, const Limits& limit) {
+  const std::uint32_t start = needs[order.front()].address;
+  std::vector<std::uint32_t> ends{end_of(needs[order.front()])};
+  for (const std::size_t i : order.subspan(1)) {
+    const std::uint32_t end = std::max(ends.back(), end_of(needs[i]));
+    if (needs[i].address > ends.back() + limit.gap || end - start > limit.most) {
+      break;
+    }
+    ends.push_back(end);
+  }
+  return ends;
+}
+
 // Dynamic programming over the needs of one table by rising address: a block takes neighbours.
 std::vector<Best> best_plans(std::span<const RegisterNeed> needs,
-                             const std::vector<std::size_t>& order, const Limits& limit) {
+                             std::span<const std::size_t> order, const Limits& limit) {
   std::vector<Best> best(order.size() + 1);
   best[0].cost = 0.0;
   for (std::size_t first = 0; first < order.size(); ++first) {
-    const std::uint32_t start = needs[order[first]].address;
-    std::uint32_t end = start;
-    for (std::size_t last = first; last < order.size(); ++last) {
-      const RegisterNeed& need = needs[order[last]];
-      const bool apart = last > first && need.address > end + limit.gap;
-      end = std::max(end, end_of(need));
-      if (apart || (last > first && end - start > limit.most)) {
-        break;
-      }
-      const double cost = best[first].cost + limit.request_cost + limit.unit_cost * (end - start);
-      if (cost < best[last + 1].cost) {
-        best[last + 1] = {.cost = cost, .first = first};
+    std::size_t after = first;
+    for (const std::uint32_t end : ends_of_blocks(needs, order.subspan(first), limit)) {
+      const std::uint32_t size = end - needs[order[first]].address;
+      const double cost = best[first].cost + limit.request_cost + limit.unit_cost * size;
+      ++after;
+      if (cost < best[after].cost) {
+        best[after] = {.cost = cost, .first = first};
       }
     }
   }
@@ -92,13 +103,14 @@ std::vector<Block> blocks_of(std::span<const RegisterNeed> needs, const BlockRul
 }
 
 Block block_around(std::span<const RegisterNeed> needs, std::vector<std::size_t> which) {
+  const Table table = needs[which.front()].table;
   std::uint32_t start = needs[which.front()].address;
   std::uint32_t end = start;
   for (const std::size_t i : which) {
     start = std::min<std::uint32_t>(start, needs[i].address);
     end = std::max(end, end_of(needs[i]));
   }
-  return {.table = needs[which.front()].table,
+  return {.table = table,
           .address = static_cast<std::uint16_t>(start),
           .count = static_cast<std::uint16_t>(end - start),
           .needs = std::move(which)};

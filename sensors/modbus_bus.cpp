@@ -210,22 +210,28 @@ class ModbusBus final : public Bus {
         answered_ = true;
         return;
       case BusFailure::timeout:
-      case BusFailure::malformed:
-        if (tcp_) {
-          drop();
-        } else {
-          unsure_[request.unit] = true;
-          quiet_from_ = Steady::now() + options_.timeout;
-        }
-        return;
-      case BusFailure::connection:
-        if (connected_) {
-          drop();
-          if (!answered_) {  // it takes connections and closes them: no better than refusing them
-            put_off();
-          }
-        }
-        return;
+      case BusFailure::malformed: out_of_step(request.unit); return;
+      case BusFailure::connection: lost(); return;
+    }
+  }
+
+  // An answer to this request may yet come.
+  void out_of_step(std::uint8_t unit) {
+    if (tcp_) {
+      drop();
+      return;
+    }
+    unsure_[unit] = true;
+    quiet_from_ = Steady::now() + options_.timeout;
+  }
+
+  void lost() {
+    if (!connected_) {
+      return;
+    }
+    drop();
+    if (!answered_) {  // it takes connections and closes them: no better than refusing them
+      put_off();
     }
   }
 

@@ -34,9 +34,10 @@ void ScanAssembler::take(std::span<const PointReading> readings) {
   }
 }
 
-bool ScanAssembler::complete() const {
-  return std::all_of(slots_.begin(), slots_.end(),
-                     [](const Slot& slot) { return slot.fresh || !slot.wired; });
+bool ScanAssembler::complete(Instant time) const {
+  return std::all_of(slots_.begin(), slots_.end(), [time](const Slot& slot) {
+    return !slot.wired || (slot.fresh && slot.last && slot.last->time >= time);
+  });
 }
 
 Reading ScanAssembler::current(Slot& slot, Instant time) const {

@@ -20,8 +20,9 @@ class ScanAssembler {
   // Readings of other machines' points are passed over. Later ones replace earlier ones.
   void take(std::span<const PointReading> readings);
 
-  // Whether every point that is wired to a bus has a reading that no scan has used yet.
-  [[nodiscard]] bool complete() const;
+  // Whether every point that is wired to a bus has a reading of `time` or later that no scan has
+  // used yet: the scan at `time` need not wait any longer.
+  [[nodiscard]] bool complete(Instant time) const;
 
   // The scan at `time`: readings in the order of the machine's points. Constant points are good at
   // `time`. A reading enters one scan only and must not be older than a period: instead of a value

@@ -12,6 +12,7 @@
 
 namespace lostwork {
 
+// NOLINTBEGIN(readability-identifier-naming): the symbols of units have their own capitals
 enum class Unit : std::uint8_t {
   degC,
   degF,
@@ -35,6 +36,7 @@ enum class Unit : std::uint8_t {
   one,
   count
 };
+// NOLINTEND(readability-identifier-naming)
 
 // "degC", "kPa_gauge", "%", "1": as in the plant file.
 [[nodiscard]] std::string_view name(Unit unit);

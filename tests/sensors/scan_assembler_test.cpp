@@ -103,13 +103,22 @@ TEST(ScanAssembler, PassesOnWhyThereIsNoValue) {
 
 TEST(ScanAssembler, IsCompleteWhenEveryWiredPointHasANewReading) {
   ScanAssembler assembler{wiring(), "chiller-1"};
-  EXPECT_FALSE(assembler.complete());
+  EXPECT_FALSE(assembler.complete(start));
   assembler.take(std::vector{good(0, 33.0, start)});
-  EXPECT_FALSE(assembler.complete());
+  EXPECT_FALSE(assembler.complete(start));
   assembler.take(std::vector{good(2, 22.0, start)});
-  EXPECT_TRUE(assembler.complete());
+  EXPECT_TRUE(assembler.complete(start));
   static_cast<void>(assembler.scan(start));
-  EXPECT_FALSE(assembler.complete());
+  EXPECT_FALSE(assembler.complete(start));
+}
+
+// Else a reading that came after its scan would put every later scan one period behind.
+TEST(ScanAssembler, IsNotCompleteWithAReadingFromBeforeTheScan) {
+  ScanAssembler assembler{wiring(), "chiller-1"};
+  assembler.take(std::vector{good(0, 33.0, start + Span{1}), good(2, 22.0, start + Span{1})});
+  EXPECT_FALSE(assembler.complete(start + period));
+  assembler.take(std::vector{good(0, 34.0, start + period), good(2, 23.0, start + period)});
+  EXPECT_TRUE(assembler.complete(start + period));
 }
 
 }  // namespace
