@@ -105,8 +105,9 @@ class History {
   // whichever suits the width.
   [[nodiscard]] std::vector<Bucket> trend(const TrendRequest& request) const;
 
-  // Means over the minutes that begin in [from, to). `time` is the minute's begin; mode, level and
-  // steadiness are those of its last scan. Blames live as long as this History.
+  // Means over the minutes that begin in [from, to). `time` is the minute's begin; mode and level
+  // are those of its last scan; steady where all of its scans were. u has seven digits. Blames live
+  // as long as this History.
   [[nodiscard]] std::vector<Assessment> assessments(std::string_view machine, Instant from,
                                                     Instant to, std::size_t limit = 10000) const;
   [[nodiscard]] std::optional<Assessment> last_assessment(std::string_view machine) const;
