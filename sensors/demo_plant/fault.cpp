@@ -201,7 +201,7 @@ std::string_view needed(const Form& form, const Fields& found, std::string_view 
   return field->second;
 }
 
-void read_size(const Form& form, const Fields& found, Fault& fault) {
+void read_size(const Form& form, const Fields& found, PlantFault& fault) {
   if (form.size_key.empty()) {
     return;
   }
@@ -249,7 +249,7 @@ std::string_view name(FaultKind kind) {
   return forms.at(static_cast<std::size_t>(kind)).name;
 }
 
-double Fault::extent(Instant time) const {
+double PlantFault::extent(Instant time) const {
   if (time < from || (to && time >= *to)) {
     return 0.0;
   }
@@ -264,13 +264,13 @@ double Fault::extent(Instant time) const {
   return std::clamp(grown, -most, most);
 }
 
-Fault parse_fault(std::string_view text, const FaultTargets& targets) {
+PlantFault parse_fault(std::string_view text, const FaultTargets& targets) {
   const auto colon = text.find(':');
   const Form& form = form_named(trimmed(text.substr(0, colon)));
   const Fields found =
       fields(colon == std::string_view::npos ? std::string_view{} : text.substr(colon + 1));
   check_keys(form, found);
-  Fault fault;
+  PlantFault fault;
   fault.kind = static_cast<FaultKind>(&form - forms.data());
   const std::string_view target = needed(form, found, target_key(form.target));
   const auto names = allowed(form.target, targets);
@@ -290,9 +290,9 @@ Fault parse_fault(std::string_view text, const FaultTargets& targets) {
   return fault;
 }
 
-std::vector<Fault> parse_fault_script(std::string_view text, const FaultTargets& targets,
-                                      std::string_view place) {
-  std::vector<Fault> faults;
+std::vector<PlantFault> parse_fault_script(std::string_view text, const FaultTargets& targets,
+                                           std::string_view place) {
+  std::vector<PlantFault> faults;
   for (int line_number = 1; !text.empty(); ++line_number) {
     const auto end = text.find('\n');
     const std::string_view whole = text.substr(0, end);

@@ -50,7 +50,7 @@ struct PowerGoal {
   Span after;          // from `from` until it has grown to that, > 0
 };
 
-struct Fault {
+struct PlantFault {
   FaultKind kind{};
   std::string target;  // id of the machine, sensor or device
   Instant from{};
@@ -80,12 +80,12 @@ class BadFault : public std::invalid_argument {
 };
 
 // Throws BadFault.
-[[nodiscard]] Fault parse_fault(std::string_view text, const FaultTargets& targets);
+[[nodiscard]] PlantFault parse_fault(std::string_view text, const FaultTargets& targets);
 
 // A whole script; `place` (a file's name) goes before the line's number in messages. Throws
 // BadFault.
-[[nodiscard]] std::vector<Fault> parse_fault_script(std::string_view text,
-                                                    const FaultTargets& targets,
-                                                    std::string_view place);
+[[nodiscard]] std::vector<PlantFault> parse_fault_script(std::string_view text,
+                                                         const FaultTargets& targets,
+                                                         std::string_view place);
 
 }  // namespace lostwork

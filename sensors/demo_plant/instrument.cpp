@@ -3,6 +3,7 @@
 #include "sensors/demo_plant/devices.h"
 #include "sensors/demo_plant/noise.h"
 
+#include <algorithm>
 #include <array>
 #include <string_view>
 #include <vector>
@@ -92,8 +93,9 @@ std::optional<double> shown(const Plant& plant, std::size_t number) {
   const double sd = instrument.noise * (instrument.noise_of_reading ? value : 1.0);
   const NoiseStream noise{.seed = plant.seed(), .stream = noise_streams + number};
   const std::int64_t moment = plant.time().time_since_epoch().count();
-  return value + constant_error(instrument, plant.seed(), number, value) +
-         sd * normal(noise, moment);
+  const double with_errors =
+      value + constant_error(instrument, plant.seed(), number, value) + sd * normal(noise, moment);
+  return point.range ? std::clamp(with_errors, point.range->min, point.range->max) : with_errors;
 }
 
 }  // namespace lostwork

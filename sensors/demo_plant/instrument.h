@@ -43,7 +43,7 @@ struct Instrument {
 inline constexpr double plant_altitude_m = 12.0;
 
 // What the instrument shows now, in the point's unit, before its register rounds it; nothing while
-// it is broken.
+// it is broken. Like a real one it stops at the ends of its range.
 [[nodiscard]] std::optional<double> shown(const Plant& plant, std::size_t instrument);
 
 }  // namespace lostwork

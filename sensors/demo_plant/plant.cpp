@@ -24,7 +24,7 @@ PlantMachine machine_named(std::string_view name) {
 }
 
 // Turns "five percent of power after 60 days" into a rate and a limit.
-void work_out_goal(Fault& fault) {
+void work_out_goal(PlantFault& fault) {
   if (!fault.goal) {
     return;
   }
@@ -44,7 +44,7 @@ bool known(const Names& names, const std::string& name) {
   return std::find(names.begin(), names.end(), name) != names.end();
 }
 
-void check_target(const Fault& fault) {
+void check_target(const PlantFault& fault) {
   const FaultTargets targets = plant_fault_targets();
   auto names = targets.machines;
   if (fault.kind == FaultKind::sensor_drift || fault.kind == FaultKind::sensor_broken) {
@@ -75,7 +75,7 @@ Plant::Plant(const PlantOptions& options)
       faults_{options.faults},
       site_{options.seed, options.start},
       machines_{made(PlantMachine::chiller), made(PlantMachine::heat_pump)} {
-  for (Fault& fault : faults_) {
+  for (PlantFault& fault : faults_) {
     check_target(fault);
     work_out_goal(fault);
   }
@@ -142,7 +142,7 @@ double Plant::refrigerant_in_air() const {
   constexpr double air_m3_per_day = 12e3;
   constexpr double vapour_kgm3 = 4.25;  // R134a at room temperature and pressure, from memory
   double leaked_kg_per_day = 0.0;
-  for (const Fault& fault : faults_) {
+  for (const PlantFault& fault : faults_) {
     const bool leaks = fault.kind == FaultKind::refrigerant_leak &&
                        fault.extent(truth_.time) > 0.0 &&
                        fault.extent(truth_.time) < fault.limit.value_or(1.0);
@@ -153,7 +153,7 @@ double Plant::refrigerant_in_air() const {
 
 double Plant::flow_loss(PlantMachine machine) const {
   double left = 1.0;
-  for (const Fault& fault : faults_) {
+  for (const PlantFault& fault : faults_) {
     if (fault.kind == FaultKind::low_condenser_flow && fault.target == id(machine)) {
       left *= 1.0 - fault.extent(truth_.time);
     }
@@ -190,7 +190,7 @@ bool Plant::broken(std::string_view sensor) const {
 
 double Plant::extent_of(FaultKind kind, std::string_view target) const {
   double sum = 0.0;
-  for (const Fault& fault : faults_) {
+  for (const PlantFault& fault : faults_) {
     if (fault.kind == kind && fault.target == target) {
       sum += fault.extent(truth_.time);
     }

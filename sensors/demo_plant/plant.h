@@ -29,7 +29,7 @@ inline constexpr std::size_t plant_machine_count = static_cast<std::size_t>(Plan
 struct PlantOptions {
   std::uint64_t seed = 1;
   Instant start = std::chrono::sys_days{std::chrono::January / 5 / 2026};
-  std::vector<Fault> faults;
+  std::vector<PlantFault> faults;
 };
 
 // What a machine's meters have counted since the plant's start.
@@ -68,7 +68,7 @@ class Plant {
   [[nodiscard]] Instant time() const { return truth_.time; }
   [[nodiscard]] std::uint64_t seed() const { return seed_; }
   [[nodiscard]] const Truth& truth() const { return truth_; }
-  [[nodiscard]] const std::vector<Fault>& faults() const { return faults_; }
+  [[nodiscard]] const std::vector<PlantFault>& faults() const { return faults_; }
 
   // How much more power the machine takes now than it would without any of its faults, for the same
   // product heat and entering temperatures, both in the steady state; percent. 0 while it is off.
@@ -91,7 +91,7 @@ class Plant {
   [[nodiscard]] double extent_of(FaultKind kind, std::string_view target) const;
 
   std::uint64_t seed_;
-  std::vector<Fault> faults_;
+  std::vector<PlantFault> faults_;
   Site site_;
   std::array<Machine, plant_machine_count> machines_;
   Truth truth_;

@@ -1,5 +1,5 @@
 // Water of the simulated loops: density and heat capacity at 300 kPa, read from a table made once
-// from IAPWS-95. Linear between nodes 1 K apart: density within 2e-6 of itself, heat capacity
+// from IAPWS-95. Linear between nodes 1 K apart: density within 3e-6 of itself, heat capacity
 // within 1e-5. From 1 to 99 degC; outside, the nearest edge.
 #pragma once
 
