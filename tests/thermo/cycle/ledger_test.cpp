@@ -368,6 +368,19 @@ TEST(Ledger, TakesThePressureOfTheLiquidWhereItIsRead) {
   EXPECT_NEAR(value(a, subcooling), bubble_T_K - machine.truth.liquid.T_K, 1e-9);
 }
 
+// Then no vapour forms in the valve: its outlet is liquid, and found by its enthalpy.
+TEST(Ledger, ClosesWhereTheLiquidIsColderThanTheEvaporator) {
+  Cycle cycle;
+  cycle.subcooling_K = 40.0;
+  const TestMachine machine = make_machine(cycle);
+  const Assessment a = assess(machine.model, machine.scan, Mode::running);
+  EXPECT_NEAR(value(a, entropy_expansion),
+              2.0 * (machine.truth.valve_out.s_JkgK - machine.truth.liquid.s_JkgK), 1e-6);
+  EXPECT_NEAR(
+      value(a, reversible_power) + value(a, lost_total) + value(a, casing) + value(a, unaccounted),
+      value(a, power), 1e-9 * value(a, power));
+}
+
 // Two paths between the same states: first along the isobar and then the isotherm, or the other way
 // round. Simpson's rule with 64 steps leaves less than 1e-8 of these changes.
 TEST(Refrigerant, ChangesItsEntropyAlikeOnTwoPaths) {
