@@ -57,6 +57,20 @@ double above(const Wanted& wanted, const Properties& at, double T_K) {
 
 }  // namespace
 
+std::optional<State> quick_vapour(const Fluid& fluid, const Wanted& wanted, const TwoPhases& line) {
+  const auto found = newton(fluid, wanted, {line.T_K, line.vapour_kgm3}, Phase::vapour);
+  const bool whole = found && found->T_K >= line.T_K && found->T_K <= fluid.max_T_K &&
+                     found->rho_kgm3 <= line.vapour_kgm3;
+  return whole ? found : std::nullopt;
+}
+
+std::optional<State> quick_liquid(const Fluid& fluid, const Wanted& wanted, const TwoPhases& line) {
+  const auto found = newton(fluid, wanted, {line.T_K, line.liquid_kgm3}, Phase::liquid);
+  const bool whole = found && found->T_K <= line.T_K && found->T_K >= fluid.min_T_K &&
+                     found->rho_kgm3 > fluid.critical_rho_kgm3;
+  return whole ? found : std::nullopt;
+}
+
 std::optional<State> quick_state(const Fluid& fluid, const Wanted& wanted) {
   const TwoPhases line = guessed_phases_at_p(fluid, wanted.p_Pa);
   if (!(line.T_K > fluid.min_T_K && line.T_K < 0.98 * fluid.critical_T_K)) {
@@ -64,16 +78,10 @@ std::optional<State> quick_state(const Fluid& fluid, const Wanted& wanted) {
   }
   const Isotherm isotherm{fluid, line.T_K};
   if (above(wanted, isotherm.properties(line.vapour_kgm3), line.T_K) > near_line) {
-    const auto found = newton(fluid, wanted, {line.T_K, line.vapour_kgm3}, Phase::vapour);
-    const bool whole = found && found->T_K > line.T_K && found->T_K <= fluid.max_T_K &&
-                       found->rho_kgm3 < line.vapour_kgm3;
-    return whole ? found : std::nullopt;
+    return quick_vapour(fluid, wanted, line);
   }
   if (above(wanted, isotherm.properties(line.liquid_kgm3), line.T_K) < -near_line) {
-    const auto found = newton(fluid, wanted, {line.T_K, line.liquid_kgm3}, Phase::liquid);
-    const bool whole = found && found->T_K < line.T_K && found->T_K >= fluid.min_T_K &&
-                       found->rho_kgm3 > line.liquid_kgm3;
-    return whole ? found : std::nullopt;
+    return quick_liquid(fluid, wanted, line);
   }
   return std::nullopt;
 }

@@ -5,6 +5,7 @@
 #pragma once
 
 #include "thermo/fluids/fluid.h"
+#include "thermo/fluids/saturation.h"
 #include "thermo/fluids/state.h"
 
 #include <optional>
@@ -23,5 +24,11 @@ struct Wanted {
 // nullopt between the phases and near their line, near the critical point, outside the limits and
 // wherever Newton's method does not converge at once. p below the critical pressure.
 [[nodiscard]] std::optional<State> quick_state(const Fluid& fluid, const Wanted& wanted);
+
+// On one side of a line that is known, for values that are known to lie there.
+[[nodiscard]] std::optional<State> quick_liquid(const Fluid& fluid, const Wanted& wanted,
+                                                const TwoPhases& line);
+[[nodiscard]] std::optional<State> quick_vapour(const Fluid& fluid, const Wanted& wanted,
+                                                const TwoPhases& line);
 
 }  // namespace lostwork

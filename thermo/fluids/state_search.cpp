@@ -115,7 +115,14 @@ Result<State> across(const Fluid& fluid, const Wanted& wanted, const Saturation&
     return mixed(line, (wanted.value_SI - liquid) / (vapour - liquid));
   }
   const double boiling_T_K = line.liquid.T_K;
-  if (wanted.value_SI < liquid) {
+  const TwoPhases phases{boiling_T_K, wanted.p_Pa, line.liquid.rho_kgm3, line.vapour.rho_kgm3};
+  const bool is_liquid = wanted.value_SI < liquid;
+  const std::optional<State> quick =
+      is_liquid ? quick_liquid(fluid, wanted, phases) : quick_vapour(fluid, wanted, phases);
+  if (quick) {
+    return *quick;
+  }
+  if (is_liquid) {
     return search(fluid, wanted,
                   {std::min(lowest_T_K(fluid), boiling_T_K), boiling_T_K,
                    first_T_K(wanted, line.liquid), Branch::liquid});

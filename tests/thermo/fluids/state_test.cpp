@@ -120,10 +120,11 @@ TEST(StateByEntropy, RefusesATemperatureBeyondTheLimits) {
 }
 
 TEST(StateByEntropy, FindsTheSameWhereTheSaturationIsKnown) {
+  // Both stop at 1e-11 of T, that is 1e-5 J/kg.
   const Saturation line = saturation_at_p(r134a, 900e3).value();
   for (const double s_JkgK : {1000.0, 1500.0, 1750.0}) {
     const GivenPs given{900e3, s_JkgK};
-    EXPECT_EQ(state(r134a, given, line).value().h_Jkg, state(r134a, given).value().h_Jkg);
+    EXPECT_NEAR(state(r134a, given, line).value().h_Jkg, state(r134a, given).value().h_Jkg, 1e-5);
   }
 }
 
