@@ -11,4 +11,9 @@ struct Measured {
   friend bool operator==(const Measured&, const Measured&) = default;
 };
 
+template <class Archive>
+void archive(Archive& a, Measured& m) {
+  a(m.value, m.u);
+}
+
 }  // namespace lostwork

@@ -119,4 +119,24 @@ struct Finding {
   std::string baseline_id;  // the baseline that it was compared with
 };
 
+template <class Archive>
+void archive(Archive& a, OnsetInterval& o) {
+  a(o.best, o.earliest, o.latest);
+}
+template <class Archive>
+void archive(Archive& a, Evidence& e) {
+  a(e.quantity, e.before_SI, e.after_SI, e.u_SI);
+}
+template <class Archive>
+void archive(Archive& a, RankedCause& c) {
+  a(c.cause, c.role, c.probability, c.amount_SI);
+}
+template <class Archive>
+void archive(Archive& a, Finding& f) {
+  a(f.id, f.machine, f.kind, f.state, f.size, f.onset, f.first_seen, f.confirmed, f.ended,
+    f.updated, f.extra_energy_J, f.compared_share, f.extra_cost, f.currency, f.extra_co2_kg,
+    f.lost_change_W, f.component, f.component_share, f.causes, f.cause_is_clear,
+    f.suspect_sensors, f.evidence, f.baseline_id);
+}
+
 }  // namespace lostwork

@@ -1,0 +1,249 @@
+#include "thermo/health/onset.h"
+
+#include <algorithm>
+#include <array>
+#include <cmath>
+#include <cstddef>
+#include <limits>
+
+namespace lostwork {
+namespace {
+
+// clamp((t - onset) / length, 0, 1)^bend; length 0 is a step, a very long one never ends.
+struct Shape {
+  double length;
+  double bend;
+};
+
+constexpr double endless = 1e4;
+constexpr auto shapes = std::to_array<Shape>({
+    {0.0, 1.0},
+    {4.0, 1.0},
+    {10.0, 1.0},
+    {25.0, 1.0},
+    {60.0, 1.0},
+    {120.0, 1.0},
+    {endless, 0.5},
+    {endless, 0.75},
+    {endless, 1.0},
+    {endless, 1.5},
+    {endless, 2.0},
+});
+
+// Largest rise believed before the figures are seen: half of the power, as a standard deviation.
+constexpr double rise_u = 0.5;
+constexpr double onset_step = 0.5;
+
+double rise(const Shape& shape, double since) {
+  if (since <= 0.0) {
+    return 0.0;
+  }
+  if (shape.length <= 0.0) {
+    return 1.0;
+  }
+  return std::pow(std::min(since / shape.length, 1.0), shape.bend);
+}
+
+// Weighted sums of a fit r = c + a g; weights 1 / (u / scatter)^2, g scaled to 1 on the last day.
+struct Sums {
+  double w = 0.0;
+  double g = 0.0;
+  double gg = 0.0;
+  double r = 0.0;
+  double rg = 0.0;
+  double rr = 0.0;
+};
+
+struct Candidate {
+  double onset;
+  double log_weight;
+  double offset;
+  double size;   // of the rise on the last day
+  double size_u;
+  Shape shape;
+  double scale;  // of g
+};
+
+struct Problem {
+  const std::vector<DayValue>* days;
+  std::vector<double> weight;
+  OnsetPrior prior;
+  double inflation;  // of the variance, by autocorrelation: fewer days than there seem to be
+};
+
+Sums sums_of(const Problem& problem, const Shape& shape, double onset, double scale) {
+  Sums s;
+  for (std::size_t i = 0; i < problem.weight.size(); ++i) {
+    const DayValue& day = (*problem.days)[i];
+    const double w = problem.weight[i];
+    const double g = rise(shape, day.day - onset) / scale;
+    s.w += w;
+    s.g += w * g;
+    s.gg += w * g * g;
+    s.r += w * day.residual;
+    s.rg += w * day.residual * g;
+    s.rr += w * day.residual * day.residual;
+  }
+  return s;
+}
+
+double log_normal_above_zero(double mean, double u) {
+  return std::log(std::max(0.5 * std::erfc(-mean / (u * std::sqrt(2.0))), 1e-300));
+}
+
+// Normal-inverse-gamma: offset ~ N(0, offset_u), rise ~ N(0, rise_u), both in units of the scatter.
+Candidate weigh(const Problem& problem, const Shape& shape, double onset, double scale) {
+  const Sums raw = sums_of(problem, shape, onset, scale);
+  const double s0 = problem.prior.scatter;
+  const double less = 1.0 / problem.inflation;
+  const double c_precision = s0 * s0 / (problem.prior.offset_u * problem.prior.offset_u);
+  const double a_precision = s0 * s0 / (rise_u * rise_u);
+  const double cc = raw.w * less + c_precision;
+  const double ca = raw.g * less;
+  const double aa = raw.gg * less + a_precision;
+  const double determinant = cc * aa - ca * ca;
+  const double offset = (aa * raw.r - ca * raw.rg) * less / determinant;
+  const double size = (cc * raw.rg - ca * raw.r) * less / determinant;
+  const double misfit = raw.rr * less - (offset * raw.r + size * raw.rg) * less;
+  const double half_freedom =
+      0.5 * (problem.prior.scatter_days + static_cast<double>(problem.weight.size()) * less);
+  const double sum = problem.prior.scatter_days * s0 * s0 + std::max(misfit, 0.0);
+  const double variance = sum / (2.0 * half_freedom);
+  const double size_u = std::sqrt(variance * cc / determinant);
+  const double log_weight =
+      -half_freedom * std::log(sum) -
+      0.5 * std::log(determinant / (c_precision * a_precision)) +
+      log_normal_above_zero(size, size_u);
+  return {.onset = onset,
+          .log_weight = log_weight,
+          .offset = offset,
+          .size = size,
+          .size_u = size_u,
+          .shape = shape,
+          .scale = scale};
+}
+
+std::vector<Candidate> candidates(const Problem& problem) {
+  std::vector<Candidate> all;
+  const double first = problem.days->front().day - 0.5;
+  const double last = problem.days->back().day;
+  for (const Shape& shape : shapes) {
+    for (double onset = first; onset < last; onset += onset_step) {
+      const double scale = rise(shape, last - onset);
+      if (scale > 1e-9) {
+        all.push_back(weigh(problem, shape, onset, scale));
+      }
+    }
+  }
+  return all;
+}
+
+const Candidate& best_of(const std::vector<Candidate>& all) {
+  return *std::max_element(all.begin(), all.end(), [](const Candidate& a, const Candidate& b) {
+    return a.log_weight < b.log_weight;
+  });
+}
+
+double autocorrelation_left(const Problem& problem, const Candidate& fit) {
+  double product = 0.0;
+  double square = 0.0;
+  double before = 0.0;
+  for (std::size_t i = 0; i < problem.weight.size(); ++i) {
+    const DayValue& day = (*problem.days)[i];
+    const double g = rise(fit.shape, day.day - fit.onset) / fit.scale;
+    const double left = (day.residual - fit.offset - fit.size * g) * std::sqrt(problem.weight[i]);
+    product += i > 0 ? left * before : 0.0;
+    square += left * left;
+    before = left;
+  }
+  return square > 0.0 ? product / square : 0.0;
+}
+
+double inflation_by(double autocorrelation) {
+  const double r = std::clamp(autocorrelation, 0.0, 0.8);
+  return (1.0 + r) / (1.0 - r);
+}
+
+double quantile(const std::vector<double>& onsets, const std::vector<double>& cumulated,
+                double share) {
+  const auto at = std::lower_bound(cumulated.begin(), cumulated.end(), share * cumulated.back());
+  const auto i = std::min(static_cast<std::size_t>(at - cumulated.begin()), onsets.size() - 1);
+  return onsets[i];
+}
+
+// Joins the shapes: weights by onset, and the size in the mean over all.
+OnsetEstimate estimate_from(const std::vector<Candidate>& all) {
+  const double top = best_of(all).log_weight;
+  const std::size_t grid = all.size() / shapes.size() + 1;
+  std::vector<double> onsets;
+  std::vector<double> weights;
+  onsets.reserve(grid);
+  weights.reserve(grid);
+  double sum = 0.0;
+  double mean = 0.0;
+  double square = 0.0;
+  for (const Candidate& c : all) {
+    const double w = std::exp(c.log_weight - top);
+    const auto at = std::lower_bound(onsets.begin(), onsets.end(), c.onset - 1e-6);
+    const auto i = static_cast<std::size_t>(at - onsets.begin());
+    if (at == onsets.end()) {
+      onsets.push_back(c.onset);
+      weights.push_back(0.0);
+    }
+    weights[i] += w;
+    sum += w;
+    mean += w * c.size;
+    square += w * (c.size * c.size + c.size_u * c.size_u);
+  }
+  const auto peak = std::max_element(weights.begin(), weights.end()) - weights.begin();
+  std::vector<double> cumulated = weights;
+  for (std::size_t i = 1; i < cumulated.size(); ++i) {
+    cumulated[i] += cumulated[i - 1];
+  }
+  mean /= sum;
+  const double best = onsets[static_cast<std::size_t>(peak)];
+  const double low = quantile(onsets, cumulated, 0.025) - onset_step;
+  const double high = quantile(onsets, cumulated, 0.975) + onset_step;
+  return {.best = best,
+          .earliest = std::min(low, best),
+          .latest = std::max(high, best),
+          .size = {.value = mean, .u = std::sqrt(std::max(0.0, square / sum - mean * mean))}};
+}
+
+bool usable(const std::vector<DayValue>& days) {
+  return std::all_of(days.begin(), days.end(), [](const DayValue& d) {
+    return std::isfinite(d.day) && std::isfinite(d.residual) && d.u > 0.0 && std::isfinite(d.u);
+  });
+}
+
+}  // namespace
+
+Result<OnsetEstimate> estimate_onset(const std::vector<DayValue>& days, const OnsetPrior& prior) {
+  if (!usable(days)) {
+    return Refusal{Reason{.code = ReasonCode::implausible, .blame = "daily residual"}};
+  }
+  if (days.size() < 5) {
+    return Refusal{Reason{.code = ReasonCode::load_too_small,
+                          .blame = "days with a residual",
+                          .value_SI = static_cast<double>(days.size())}};
+  }
+  Problem problem{.days = &days,
+                  .weight = {},
+                  .prior = prior,
+                  .inflation = inflation_by(prior.autocorrelation)};
+  for (const DayValue& day : days) {
+    problem.weight.push_back(prior.scatter * prior.scatter / (day.u * day.u));
+  }
+  std::vector<Candidate> all = candidates(problem);
+  const double left = autocorrelation_left(problem, best_of(all));
+  if (left > prior.autocorrelation) {
+    problem.inflation = inflation_by(left);
+    all = candidates(problem);
+  }
+  if (best_of(all).size <= 0.0) {
+    return Refusal{Reason{.code = ReasonCode::contradicts, .blame = "daily residual"}};
+  }
+  return estimate_from(all);
+}
+
+}  // namespace lostwork
