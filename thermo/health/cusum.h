@@ -1,8 +1,8 @@
 // Cumulative-sum charts, and the limits that keep a false-alarm budget.
 //
 // Pure; random numbers come from a fixed seed, so that a limit is a function of its arguments.
-// Source: Page 1954; Montgomery, Introduction to Statistical Quality Control (run lengths: the tests
-// hold the simulator to his tables). Autocorrelated residuals: simulated, not tabulated.
+// Source: Page 1954; Montgomery, Introduction to Statistical Quality Control (run lengths: the
+// tests hold the simulator to his tables). Autocorrelated residuals: simulated, not tabulated.
 #pragma once
 
 #include <cstdint>

@@ -30,6 +30,7 @@ constexpr std::array<FeatureInfo, feature_count> infos{
      {"cold_approach", Quantity::cold_approach, false, false, 1.0, 0.15},
      {"superheat", Quantity::superheat, false, false, 1.0, 0.3},
      {"subcooling", Quantity::subcooling, false, false, 1.0, 0.2},
+     {"subcooling_share", std::nullopt, false, false, 0.1, 0.02},
      {"efficiency", Quantity::isentropic_efficiency, false, false, 0.02, 0.005},
      {"hot_range", std::nullopt, false, false, 0.5, 0.1},
      {"hot_flow", Quantity::hot_flow, true, false, 0.05, 0.01},
@@ -52,13 +53,17 @@ struct Ends {
 
 Result<Conditions> conditions_from(Duty duty, const Ends& ends) {
   if (!(ends.heat_W > 0.0)) {
-    return Refusal{Reason{
-        .code = ReasonCode::load_too_small, .blame = "product heat", .value_SI = ends.heat_W}};
+    return Refusal{
+        Reason{
+               .code = ReasonCode::load_too_small, .blame = "product heat", .value_SI = ends.heat_W}
+    };
   }
   if (!(ends.cold_T_K > 0.0) || !(ends.hot_T_K - ends.cold_T_K >= least_lift_K)) {
-    return Refusal{Reason{.code = ReasonCode::lift_too_small,
-                          .blame = "lift",
-                          .value_SI = ends.hot_T_K - ends.cold_T_K}};
+    return Refusal{
+        Reason{.code = ReasonCode::lift_too_small,
+               .blame = "lift",
+               .value_SI = ends.hot_T_K - ends.cold_T_K}
+    };
   }
   const double difference_K = ends.hot_T_K - ends.cold_T_K;
   if (duty == Duty::cooling) {
@@ -99,8 +104,7 @@ void read_pressures(const MachineModel& machine, const Window& window, Inputs& i
     const auto low = state(*machine.refrigerant, GivenTx{.T_K = *evaporating, .quality = 1.0});
     if (low) {
       inputs[Input::suction_pressure] = low->p_Pa;
-      inputs[Input::suction_temperature] =
-          sum(evaporating, mean(window, Quantity::superheat), 1.0);
+      inputs[Input::suction_temperature] = sum(evaporating, mean(window, Quantity::superheat), 1.0);
     }
   }
   if (const auto condensing = mean(window, Quantity::condensing)) {
@@ -156,9 +160,8 @@ std::optional<Circuit> circuit_of(const Fluid& fluid, const Inputs& in) {
     return std::nullopt;
   }
   const auto isentropic = state(fluid, GivenPs{.p_Pa = *p_high, .s_JkgK = suction->s_JkgK});
-  const auto liquid = *T_liquid < bubble->T_K
-                          ? state(fluid, GivenTp{.T_K = *T_liquid, .p_Pa = *p_high})
-                          : bubble;
+  const auto liquid =
+      *T_liquid < bubble->T_K ? state(fluid, GivenTp{.T_K = *T_liquid, .p_Pa = *p_high}) : bubble;
   if (!isentropic || !liquid) {
     return std::nullopt;
   }
@@ -184,7 +187,12 @@ void add_temperatures(const Fluid& fluid, const Inputs& in, FeatureValues& out) 
     const auto bubble = state(fluid, GivenPx{.p_Pa = *p, .quality = 0.0});
     if (dew && bubble) {
       put(out, Feature::hot_approach, sum(dew->T_K, in[Input::hot_out], -1.0));
-      put(out, Feature::subcooling, sum(bubble->T_K, in[Input::liquid_temperature], -1.0));
+      const auto subcooling_K = sum(bubble->T_K, in[Input::liquid_temperature], -1.0);
+      put(out, Feature::subcooling, subcooling_K);
+      const auto drive_K = sum(dew->T_K, in[Input::hot_in], -1.0);
+      if (subcooling_K && drive_K && *drive_K > 1.0) {
+        put(out, Feature::subcooling_share, *subcooling_K / *drive_K);
+      }
     }
   }
 }
@@ -221,7 +229,9 @@ void add_streams(const Inputs& in, FeatureValues& out) {
 }
 
 Refusal missing(std::string_view what) {
-  return Refusal{Reason{.code = ReasonCode::not_read, .blame = what}};
+  return Refusal{
+      Reason{.code = ReasonCode::not_read, .blame = what}
+  };
 }
 
 }  // namespace
@@ -244,8 +254,8 @@ Result<Conditions> conditions_of(Duty duty, const QuantityValues& values) {
       return Refusal{value->error()};
     }
   }
-  return conditions_from(
-      duty, {.heat_W = heat->value, .cold_T_K = cold->value, .hot_T_K = hot->value});
+  return conditions_from(duty,
+                         {.heat_W = heat->value, .cold_T_K = cold->value, .hot_T_K = hot->value});
 }
 
 Result<Conditions> conditions_of(Duty duty, const Inputs& inputs) {

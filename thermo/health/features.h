@@ -1,5 +1,5 @@
-// What a steady window says about a machine: the conditions that it ran under, and the features that
-// tell how well it did.
+// What a steady window says about a machine: the conditions that it ran under, and the features
+// that tell how well it did.
 //
 // Pure. One function makes the features from the measured inputs, for windows as they were and for
 // what-if inputs alike, so that the trace of a biased sensor is computed and not tabulated.
@@ -55,10 +55,10 @@ struct Inputs {
 };
 
 struct Conditions {
-  double heat_W = 0.0;       // of the product, > 0
-  double lift = 0.0;         // L, a ratio
+  double heat_W = 0.0;         // of the product, > 0
+  double lift = 0.0;           // L, a ratio
   double reference_T_K = 0.0;  // T0 of the entropy form
-  double product_T_K = 0.0;  // leaving, on the product's side
+  double product_T_K = 0.0;    // leaving, on the product's side
 };
 
 // Stored in states: the numbers are never changed, new ones go to the end.
@@ -68,6 +68,7 @@ enum class Feature : std::uint8_t {
   cold_approach,       // K
   superheat,           // K
   subcooling,          // K
+  subcooling_share,    // of condensing temperature less hot stream entering
   efficiency,          // isentropic, ratio
   hot_range,           // K, hot stream leaving less entering; only without a meter for its flow
   hot_flow,            // kg/s; residuals are ratios
@@ -118,5 +119,18 @@ struct FeatureInfo {
 // Refuses: as conditions_of.
 [[nodiscard]] Result<Sample> sample_of(const MachineModel& machine, const Window& window,
                                        const Inputs& inputs);
+
+template <class Archive>
+void archive(Archive& a, Inputs& i) {
+  a(i.values, i.cold_cp_JkgK, i.hot_cp_JkgK);
+}
+template <class Archive>
+void archive(Archive& a, Conditions& c) {
+  a(c.heat_W, c.lift, c.reference_T_K, c.product_T_K);
+}
+template <class Archive>
+void archive(Archive& a, Sample& s) {
+  a(s.begin, s.end, s.conditions, s.features);
+}
 
 }  // namespace lostwork

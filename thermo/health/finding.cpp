@@ -15,11 +15,13 @@ struct CauseWords {
 constexpr std::array<CauseWords, static_cast<std::size_t>(Cause::count)> cause_words{
     {
      {"condenser_fouled", "the condenser is fouled",
-     "Look into the condenser's water side, or compare its approach before and after cleaning."},
+     "Look into the condenser's water side, or compare its approach before and after "
+     "cleaning."},
      {"hot_flow_low", "too little water flows through the condenser",
      "Read the pump and the strainer, and compare the water flow with a second meter."},
      {"evaporator_fouled", "the evaporator is fouled",
-     "Look into the evaporator's water side, and have the oil return checked by a licensed person."},
+     "Look into the evaporator's water side, and have the oil return checked by a licensed "
+     "person."},
      {"cold_flow_low", "too little water flows through the evaporator",
      "Read the pump and the strainer, and compare the water flow with a second meter."},
      {"refrigerant_low", "refrigerant is missing",
@@ -28,8 +30,10 @@ constexpr std::array<CauseWords, static_cast<std::size_t>(Cause::count)> cause_w
      "Have a licensed person compare pressure and liquid temperature with the machine standing "
      "still."},
      {"compressor_worn", "the compressor has become less efficient",
-     "Have a licensed person check valves, clearances and oil, and compare with the maker's figures."},
-     {"sensor", "a sensor reads wrong", "Compare the sensor with a calibrated one at the same place."},
+     "Have a licensed person check valves, clearances and oil, and compare with the maker's "
+     "figures."},
+     {"sensor", "a sensor reads wrong",
+     "Compare the sensor with a calibrated one at the same place."},
      }
 };
 

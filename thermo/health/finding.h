@@ -84,8 +84,8 @@ struct RankedCause {
   Cause cause{};
   std::optional<Role> role;  // with Cause::sensor
   double probability = 0.0;  // 0..1 among the causes that were compared
-  // What it takes to explain the figures: a share for flow, efficiency; K for approach, subcooling;
-  // the sensor's unit in SI for a sensor. Signed.
+  // What it takes to explain the figures: a share of the flow; K of approach; of the subcooling
+  // the change of its share; the change of the efficiency; a sensor's bias in its SI unit, signed.
   Measured amount_SI;
 };
 
@@ -135,8 +135,8 @@ template <class Archive>
 void archive(Archive& a, Finding& f) {
   a(f.id, f.machine, f.kind, f.state, f.size, f.onset, f.first_seen, f.confirmed, f.ended,
     f.updated, f.extra_energy_J, f.compared_share, f.extra_cost, f.currency, f.extra_co2_kg,
-    f.lost_change_W, f.component, f.component_share, f.causes, f.cause_is_clear,
-    f.suspect_sensors, f.evidence, f.baseline_id);
+    f.lost_change_W, f.component, f.component_share, f.causes, f.cause_is_clear, f.suspect_sensors,
+    f.evidence, f.baseline_id);
 }
 
 }  // namespace lostwork

@@ -88,6 +88,11 @@ struct HealthUpdate {
 // calling it more often changes nothing.
 [[nodiscard]] HealthUpdate advance_time(const HealthModel& model, HealthState state, Instant now);
 
+// Energy that the machine used in a stretch of one day that ends at `time`, steady or not: call it
+// for every scan. Makes the cost of a drift that of all hours instead of that of the steady
+// windows.
+[[nodiscard]] HealthState take_energy(HealthState state, Instant time, double energy_J);
+
 struct Expectation {
   Measured power_W;     // expected; u: of the prediction of one window, model and scatter
   double half_width_W;  // 95 % prediction interval: power_W.value +- half_width_W

@@ -1,10 +1,10 @@
 #include "thermo/health/least_squares.h"
 
-#include <Eigen/Dense>
-
 #include <algorithm>
 #include <cmath>
 #include <utility>
+
+#include <Eigen/Dense>
 
 namespace lostwork {
 namespace {
@@ -145,7 +145,9 @@ Result<Vector> solve_not_negative(const Matrix& a, const Vector& b) {
     }
     x = z;
   }
-  return Refusal{Reason{.code = ReasonCode::not_converged, .blame = "non-negative fit"}};
+  return Refusal{
+      Reason{.code = ReasonCode::not_converged, .blame = "non-negative fit"}
+  };
 }
 
 Result<Vector> solve(const Matrix& a, const Vector& b, Sign sign) {
@@ -195,7 +197,9 @@ std::vector<double> figures(const Vector& v) {
 }
 
 Refusal unusable() {
-  return Refusal{Reason{.code = ReasonCode::implausible, .blame = "least squares"}};
+  return Refusal{
+      Reason{.code = ReasonCode::implausible, .blame = "least squares"}
+  };
 }
 
 }  // namespace
@@ -212,7 +216,9 @@ Result<RobustFit> robust_fit(const LinearSystem& system, Sign sign) {
     return unusable();
   }
   if (system.b.size() < system.columns + 3) {
-    return Refusal{Reason{.code = ReasonCode::load_too_small, .blame = "rows to fit"}};
+    return Refusal{
+        Reason{.code = ReasonCode::load_too_small, .blame = "rows to fit"}
+    };
   }
   const Matrix a = matrix_of(system);
   const Vector b = vector_of(system);
@@ -230,10 +236,11 @@ Result<RobustFit> robust_fit(const LinearSystem& system, Sign sign) {
   const Vector root = weight.cwiseSqrt();
   const double freedom = weight.sum() - static_cast<double>(a.cols());
   const Matrix spread = spread_of(a, weight);
-  return RobustFit{.x = figures(*x),
-                   .weights = figures(weight),
-                   .spread = std::vector<double>(spread.data(), spread.data() + spread.size()),
-                   .scatter = root.cwiseProduct(residual).norm() / std::sqrt(std::max(freedom, 1.0))};
+  return RobustFit{
+      .x = figures(*x),
+      .weights = figures(weight),
+      .spread = std::vector<double>(spread.data(), spread.data() + spread.size()),
+      .scatter = root.cwiseProduct(residual).norm() / std::sqrt(std::max(freedom, 1.0))};
 }
 
 double leverage(const std::vector<double>& row, const std::vector<double>& spread) {

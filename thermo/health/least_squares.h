@@ -27,9 +27,9 @@ enum class Sign : bool { any, not_negative };
 
 struct RobustFit {
   std::vector<double> x;
-  std::vector<double> weights;   // of the rows, 0..1
-  std::vector<double> spread;    // (A' W A)^-1 of all columns, columns * columns; symmetric
-  double scatter = 0.0;          // standard deviation of the residuals, degrees of freedom counted
+  std::vector<double> weights;  // of the rows, 0..1
+  std::vector<double> spread;   // (A' W A)^-1 of all columns, columns * columns; symmetric
+  double scatter = 0.0;         // standard deviation of the residuals, degrees of freedom counted
 };
 
 // Three passes of Huber's weights.

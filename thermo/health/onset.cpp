@@ -17,21 +17,22 @@ struct Shape {
 
 constexpr double endless = 1e4;
 constexpr auto shapes = std::to_array<Shape>({
-    {0.0, 1.0},
-    {4.0, 1.0},
-    {10.0, 1.0},
-    {25.0, 1.0},
-    {60.0, 1.0},
-    {120.0, 1.0},
-    {endless, 0.5},
+    {    0.0,  1.0},
+    {    4.0,  1.0},
+    {   10.0,  1.0},
+    {   25.0,  1.0},
+    {   60.0,  1.0},
+    {  120.0,  1.0},
+    {endless,  0.5},
     {endless, 0.75},
-    {endless, 1.0},
-    {endless, 1.5},
-    {endless, 2.0},
+    {endless,  1.0},
+    {endless,  1.5},
+    {endless,  2.0},
 });
 
 // Largest rise believed before the figures are seen: half of the power, as a standard deviation.
 constexpr double rise_u = 0.5;
+// Onsets are tried at the beginning and in the middle of each day.
 constexpr double onset_step = 0.5;
 
 double rise(const Shape& shape, double since) {
@@ -58,9 +59,9 @@ struct Candidate {
   double onset;
   double log_weight;
   double offset;
-  double size;   // of the rise on the last day
+  double size;  // of the rise on the last day
   double size_u;
-  Shape shape;
+  std::size_t shape;
   double scale;  // of g
 };
 
@@ -69,20 +70,29 @@ struct Problem {
   std::vector<double> weight;
   OnsetPrior prior;
   double inflation;  // of the variance, by autocorrelation: fewer days than there seem to be
+  Sums constant;     // w, r and rr of all days
+  std::vector<std::vector<double>> rises;  // by shape and half days since the onset
 };
 
-Sums sums_of(const Problem& problem, const Shape& shape, double onset, double scale) {
-  Sums s;
-  for (std::size_t i = 0; i < problem.weight.size(); ++i) {
+// Half days from the onset, itself counted in half days, to the middle of a day; <= 0: before.
+std::int64_t half_days(std::int64_t day, std::int64_t onset) {
+  return 2 * day + 1 - onset;
+}
+
+Sums sums_of(const Problem& problem, std::size_t shape, std::int64_t onset, double scale) {
+  Sums s = problem.constant;
+  const std::vector<double>& rises = problem.rises[shape];
+  for (std::size_t i = problem.weight.size(); i-- > 0;) {
     const DayValue& day = (*problem.days)[i];
-    const double w = problem.weight[i];
-    const double g = rise(shape, day.day - onset) / scale;
-    s.w += w;
-    s.g += w * g;
-    s.gg += w * g * g;
-    s.r += w * day.residual;
-    s.rg += w * day.residual * g;
-    s.rr += w * day.residual * day.residual;
+    const std::int64_t since = half_days(day.day, onset);
+    if (since <= 0) {
+      break;
+    }
+    const double g = rises[static_cast<std::size_t>(since)] / scale;
+    const double wg = problem.weight[i] * g;
+    s.g += wg;
+    s.gg += wg * g;
+    s.rg += wg * day.residual;
   }
   return s;
 }
@@ -92,7 +102,7 @@ double log_normal_above_zero(double mean, double u) {
 }
 
 // Normal-inverse-gamma: offset ~ N(0, offset_u), rise ~ N(0, rise_u), both in units of the scatter.
-Candidate weigh(const Problem& problem, const Shape& shape, double onset, double scale) {
+Candidate weigh(const Problem& problem, std::size_t shape, std::int64_t onset, double scale) {
   const Sums raw = sums_of(problem, shape, onset, scale);
   const double s0 = problem.prior.scatter;
   const double less = 1.0 / problem.inflation;
@@ -110,11 +120,10 @@ Candidate weigh(const Problem& problem, const Shape& shape, double onset, double
   const double sum = problem.prior.scatter_days * s0 * s0 + std::max(misfit, 0.0);
   const double variance = sum / (2.0 * half_freedom);
   const double size_u = std::sqrt(variance * cc / determinant);
-  const double log_weight =
-      -half_freedom * std::log(sum) -
-      0.5 * std::log(determinant / (c_precision * a_precision)) +
-      log_normal_above_zero(size, size_u);
-  return {.onset = onset,
+  const double log_weight = -half_freedom * std::log(sum) -
+                            0.5 * std::log(determinant / (c_precision * a_precision)) +
+                            log_normal_above_zero(size, size_u);
+  return {.onset = onset_step * static_cast<double>(onset),
           .log_weight = log_weight,
           .offset = offset,
           .size = size,
@@ -125,14 +134,12 @@ Candidate weigh(const Problem& problem, const Shape& shape, double onset, double
 
 std::vector<Candidate> candidates(const Problem& problem) {
   std::vector<Candidate> all;
-  const double first = problem.days->front().day - 0.5;
-  const double last = problem.days->back().day;
-  for (const Shape& shape : shapes) {
-    for (double onset = first; onset < last; onset += onset_step) {
-      const double scale = rise(shape, last - onset);
-      if (scale > 1e-9) {
-        all.push_back(weigh(problem, shape, onset, scale));
-      }
+  const std::int64_t first = 2 * problem.days->front().day;
+  const std::int64_t last = problem.days->back().day;
+  for (std::size_t shape = 0; shape < shapes.size(); ++shape) {
+    for (std::int64_t onset = first; half_days(last, onset) > 0; ++onset) {
+      const double scale = problem.rises[shape][static_cast<std::size_t>(half_days(last, onset))];
+      all.push_back(weigh(problem, shape, onset, scale));
     }
   }
   return all;
@@ -150,7 +157,8 @@ double autocorrelation_left(const Problem& problem, const Candidate& fit) {
   double before = 0.0;
   for (std::size_t i = 0; i < problem.weight.size(); ++i) {
     const DayValue& day = (*problem.days)[i];
-    const double g = rise(fit.shape, day.day - fit.onset) / fit.scale;
+    const double since = static_cast<double>(day.day) + 0.5 - fit.onset;
+    const double g = rise(shapes.at(fit.shape), since) / fit.scale;
     const double left = (day.residual - fit.offset - fit.size * g) * std::sqrt(problem.weight[i]);
     product += i > 0 ? left * before : 0.0;
     square += left * left;
@@ -171,26 +179,21 @@ double quantile(const std::vector<double>& onsets, const std::vector<double>& cu
   return onsets[i];
 }
 
-// Joins the shapes: weights by onset, and the size in the mean over all.
+// Joins the shapes: weights by onset, and the size in the mean over all. Every shape has the same
+// onsets, in order.
 OnsetEstimate estimate_from(const std::vector<Candidate>& all) {
   const double top = best_of(all).log_weight;
-  const std::size_t grid = all.size() / shapes.size() + 1;
-  std::vector<double> onsets;
-  std::vector<double> weights;
-  onsets.reserve(grid);
-  weights.reserve(grid);
+  const std::size_t grid = all.size() / shapes.size();
+  std::vector<double> onsets(grid, 0.0);
+  std::vector<double> weights(grid, 0.0);
   double sum = 0.0;
   double mean = 0.0;
   double square = 0.0;
-  for (const Candidate& c : all) {
+  for (std::size_t i = 0; i < all.size(); ++i) {
+    const Candidate& c = all[i];
     const double w = std::exp(c.log_weight - top);
-    const auto at = std::lower_bound(onsets.begin(), onsets.end(), c.onset - 1e-6);
-    const auto i = static_cast<std::size_t>(at - onsets.begin());
-    if (at == onsets.end()) {
-      onsets.push_back(c.onset);
-      weights.push_back(0.0);
-    }
-    weights[i] += w;
+    onsets[i % grid] = c.onset;
+    weights[i % grid] += w;
     sum += w;
     mean += w * c.size;
     square += w * (c.size * c.size + c.size_u * c.size_u);
@@ -204,36 +207,65 @@ OnsetEstimate estimate_from(const std::vector<Candidate>& all) {
   const double best = onsets[static_cast<std::size_t>(peak)];
   const double low = quantile(onsets, cumulated, 0.025) - onset_step;
   const double high = quantile(onsets, cumulated, 0.975) + onset_step;
-  return {.best = best,
-          .earliest = std::min(low, best),
-          .latest = std::max(high, best),
-          .size = {.value = mean, .u = std::sqrt(std::max(0.0, square / sum - mean * mean))}};
+  return {
+      .best = best,
+      .earliest = std::min(low, best),
+      .latest = std::max(high, best),
+      .size = {.value = mean, .u = std::sqrt(std::max(0.0, square / sum - mean * mean))}
+  };
 }
 
 bool usable(const std::vector<DayValue>& days) {
+  for (std::size_t i = 1; i < days.size(); ++i) {
+    if (days[i].day <= days[i - 1].day) {
+      return false;
+    }
+  }
   return std::all_of(days.begin(), days.end(), [](const DayValue& d) {
-    return std::isfinite(d.day) && std::isfinite(d.residual) && d.u > 0.0 && std::isfinite(d.u);
+    return std::isfinite(d.residual) && d.u > 0.0 && std::isfinite(d.u);
   });
+}
+
+Problem problem_of(const std::vector<DayValue>& days, const OnsetPrior& prior) {
+  Problem problem{.days = &days,
+                  .weight = {},
+                  .prior = prior,
+                  .inflation = inflation_by(prior.autocorrelation),
+                  .constant = {},
+                  .rises = {}};
+  for (const DayValue& day : days) {
+    const double w = prior.scatter * prior.scatter / (day.u * day.u);
+    problem.weight.push_back(w);
+    problem.constant.w += w;
+    problem.constant.r += w * day.residual;
+    problem.constant.rr += w * day.residual * day.residual;
+  }
+  const std::int64_t most = half_days(days.back().day, 2 * days.front().day);
+  for (const Shape& shape : shapes) {
+    std::vector<double>& rises = problem.rises.emplace_back();
+    for (std::int64_t since = 0; since <= most; ++since) {
+      rises.push_back(rise(shape, onset_step * static_cast<double>(since)));
+    }
+  }
+  return problem;
 }
 
 }  // namespace
 
 Result<OnsetEstimate> estimate_onset(const std::vector<DayValue>& days, const OnsetPrior& prior) {
   if (!usable(days)) {
-    return Refusal{Reason{.code = ReasonCode::implausible, .blame = "daily residual"}};
+    return Refusal{
+        Reason{.code = ReasonCode::implausible, .blame = "daily residual"}
+    };
   }
   if (days.size() < 5) {
-    return Refusal{Reason{.code = ReasonCode::load_too_small,
-                          .blame = "days with a residual",
-                          .value_SI = static_cast<double>(days.size())}};
+    return Refusal{
+        Reason{.code = ReasonCode::load_too_small,
+               .blame = "days with a residual",
+               .value_SI = static_cast<double>(days.size())}
+    };
   }
-  Problem problem{.days = &days,
-                  .weight = {},
-                  .prior = prior,
-                  .inflation = inflation_by(prior.autocorrelation)};
-  for (const DayValue& day : days) {
-    problem.weight.push_back(prior.scatter * prior.scatter / (day.u * day.u));
-  }
+  Problem problem = problem_of(days, prior);
   std::vector<Candidate> all = candidates(problem);
   const double left = autocorrelation_left(problem, best_of(all));
   if (left > prior.autocorrelation) {
@@ -241,7 +273,9 @@ Result<OnsetEstimate> estimate_onset(const std::vector<DayValue>& days, const On
     all = candidates(problem);
   }
   if (best_of(all).size <= 0.0) {
-    return Refusal{Reason{.code = ReasonCode::contradicts, .blame = "daily residual"}};
+    return Refusal{
+        Reason{.code = ReasonCode::contradicts, .blame = "daily residual"}
+    };
   }
   return estimate_from(all);
 }

@@ -10,32 +10,33 @@
 #include "thermo/measured.h"
 #include "thermo/result.h"
 
+#include <cstdint>
 #include <vector>
 
 namespace lostwork {
 
 struct DayValue {
-  double day;       // middle of the day, in days since any origin
-  double residual;  // ratio
-  double u;         // its own standard uncertainty, > 0: says how days compare with each other
+  std::int64_t day;  // since any origin; its figures belong to its middle
+  double residual;   // ratio
+  double u;          // its own standard uncertainty, > 0: says how days compare with each other
 };
 
 struct OnsetPrior {
-  double offset_u = 0.005;        // how far the baseline may be off in the mean
-  double scatter = 0.01;          // of a day, from the baseline
-  double scatter_days = 20.0;     // how many days that is worth
-  double autocorrelation = 0.0;   // of the baseline's days
+  double offset_u = 0.005;       // how far the baseline may be off in the mean
+  double scatter = 0.01;         // of a day, from the baseline
+  double scatter_days = 20.0;    // how many days that is worth
+  double autocorrelation = 0.0;  // of the baseline's days
 };
 
 struct OnsetEstimate {
-  double best;  // most likely onset, in days since the same origin
+  double best;  // most likely onset, in days since the beginning of day 0
   double earliest;
-  double latest;   // 95 % interval
-  Measured size;   // of the rise on the last day, ratio
+  double latest;  // 95 % interval
+  Measured size;  // of the rise on the last day, ratio
 };
 
-// Days in order. Refuses: load_too_small with fewer than five days; implausible where a figure is
-// not finite or u is not above 0; contradicts where no rise explains the figures.
+// Days in order, each once. Refuses: load_too_small with fewer than five days; implausible where a
+// figure is not finite or u is not above 0; contradicts where no rise explains the figures.
 [[nodiscard]] Result<OnsetEstimate> estimate_onset(const std::vector<DayValue>& days,
                                                    const OnsetPrior& prior);
 

@@ -1,0 +1,178 @@
+#include "thermo/health/diagnosis.h"
+
+#include "thermo/health/traces.h"
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+
+namespace lostwork {
+namespace {
+
+// What was seen of one feature, in natural units.
+struct Seen {
+  std::size_t feature;
+  double value;
+  double variance;
+};
+
+std::vector<Seen> seen_of(const Shift& shift) {
+  std::vector<Seen> out;
+  for (std::size_t i = 0; i < feature_count; ++i) {
+    const auto feature = static_cast<Feature>(i);
+    if (const auto& s = shift.at(i); s && compared(feature)) {
+      const double natural = info(feature).natural;
+      const double u = s->u / natural;
+      out.push_back({.feature = i, .value = s->value / natural, .variance = u * u});
+    }
+  }
+  return out;
+}
+
+double log_likelihood(const std::vector<Seen>& seen, const Trace& trace, double amount) {
+  double sum = 0.0;
+  for (const Seen& s : seen) {
+    const double tolerance = amount * trace.tolerance.at(s.feature);
+    const double variance = s.variance + tolerance * tolerance;
+    const double off = s.value - amount * trace.mean.at(s.feature);
+    sum -= 0.5 * (off * off / variance + std::log(variance));
+  }
+  return sum;
+}
+
+struct Best {
+  double amount;
+  double log_likelihood;
+};
+
+// Scans amounts a tenth apart in ratio, then narrows about the best.
+Best best_amount(const std::vector<Seen>& seen, const Trace& trace, double sign) {
+  Best best{.amount = 0.0, .log_likelihood = -std::numeric_limits<double>::infinity()};
+  for (double size = 0.01; size < 200.0; size *= 1.1) {
+    const double l = log_likelihood(seen, trace, sign * size);
+    if (l > best.log_likelihood) {
+      best = {.amount = sign * size, .log_likelihood = l};
+    }
+  }
+  double ratio = 1.05;
+  for (int i = 0; i < 12; ++i) {
+    for (const double factor : {ratio, 1.0 / ratio}) {
+      const double l = log_likelihood(seen, trace, best.amount * factor);
+      if (l > best.log_likelihood) {
+        best = {.amount = best.amount * factor, .log_likelihood = l};
+      }
+    }
+    ratio = std::sqrt(ratio);
+  }
+  return best;
+}
+
+double amount_u(const std::vector<Seen>& seen, const Trace& trace, double amount) {
+  double information = 0.0;
+  for (const Seen& s : seen) {
+    const double tolerance = amount * trace.tolerance.at(s.feature);
+    const double mean = trace.mean.at(s.feature);
+    information += mean * mean / (s.variance + tolerance * tolerance);
+  }
+  return information > 0.0 ? 1.0 / std::sqrt(information) : 0.0;
+}
+
+// Whether the cause can be seen at all in what was compared.
+bool visible(const std::vector<Seen>& seen, const Trace& trace) {
+  double largest = 0.0;
+  double seen_largest = 0.0;
+  for (std::size_t f = 0; f < feature_count; ++f) {
+    largest =
+        compared(static_cast<Feature>(f)) ? std::max(largest, std::abs(trace.mean.at(f))) : largest;
+  }
+  for (const Seen& s : seen) {
+    seen_largest = std::max(seen_largest, std::abs(trace.mean.at(s.feature)));
+  }
+  return seen_largest > 0.3 * largest;
+}
+
+struct Weighed {
+  RankedCause cause;
+  double log_likelihood;
+};
+
+std::optional<Weighed> weigh(const std::vector<Seen>& seen, const Trace& trace) {
+  if (!visible(seen, trace)) {
+    return std::nullopt;
+  }
+  Best best = best_amount(seen, trace, 1.0);
+  if (trace.either_sign) {
+    const Best other = best_amount(seen, trace, -1.0);
+    best = other.log_likelihood > best.log_likelihood ? other : best;
+  }
+  return Weighed{
+      .cause = {.cause = trace.cause,
+                .role = trace.role,
+                .probability = 0.0,
+                .amount_SI = {.value = best.amount * trace.unit_SI,
+                .u = amount_u(seen, trace, best.amount) * trace.unit_SI}},
+      .log_likelihood = best.log_likelihood
+  };
+}
+
+// A cause with several traces counts once, with the one that fits best.
+void keep_better(std::vector<Weighed>& all, const Weighed& weighed) {
+  const auto same = std::find_if(all.begin(), all.end(), [&](const Weighed& w) {
+    return w.cause.cause == weighed.cause.cause && w.cause.role == weighed.cause.role;
+  });
+  if (same == all.end()) {
+    all.push_back(weighed);
+  } else if (weighed.log_likelihood > same->log_likelihood) {
+    *same = weighed;
+  }
+}
+
+double log_likelihood_of_nothing(const std::vector<Seen>& seen) {
+  return log_likelihood(seen, Trace{}, 0.0);
+}
+
+// Half the square of three and a half standard deviations: one amount was chosen out of many.
+constexpr double beyond_chance = 6.0;
+
+}  // namespace
+
+bool compared(Feature feature) {
+  return feature != Feature::power && feature != Feature::subcooling &&
+         feature < Feature::lost_compressor;
+}
+
+Diagnosis diagnose(const MachineModel& machine, const Baseline& baseline,
+                   const DiagnosisInput& input, double margin) {
+  const std::vector<Seen> seen = seen_of(input.shift);
+  std::vector<Trace> traces = machine_traces();
+  const std::vector<Trace> sensors = sensor_traces(machine, baseline, input.inputs);
+  traces.insert(traces.end(), sensors.begin(), sensors.end());
+  std::vector<Weighed> all;
+  for (const Trace& trace : traces) {
+    if (const auto weighed = weigh(seen, trace)) {
+      keep_better(all, *weighed);
+    }
+  }
+  std::stable_sort(all.begin(), all.end(), [](const Weighed& a, const Weighed& b) {
+    return a.log_likelihood > b.log_likelihood;
+  });
+  Diagnosis out;
+  if (all.empty()) {
+    return out;
+  }
+  const double top = all.front().log_likelihood;
+  double sum = 0.0;
+  for (const Weighed& w : all) {
+    sum += std::exp(w.log_likelihood - top);
+  }
+  for (Weighed& w : all) {
+    w.cause.probability = std::exp(w.log_likelihood - top) / sum;
+    out.causes.push_back(w.cause);
+  }
+  out.explained = top - log_likelihood_of_nothing(seen) > beyond_chance;
+  out.clear = out.explained &&
+              (all.size() < 2 || out.causes[0].probability >= margin * out.causes[1].probability);
+  return out;
+}
+
+}  // namespace lostwork
