@@ -1,12 +1,15 @@
 #include "sensors/modbus_bus.h"
 #include "tests/sensors/modbus_server.h"
 
+#include <algorithm>
 #include <arpa/inet.h>
 #include <chrono>
 #include <optional>
 #include <poll.h>
 #include <stdexcept>
 #include <string>
+#include <sys/resource.h>
+#include <sys/select.h>
 #include <sys/socket.h>
 #include <unistd.h>
 #include <vector>
@@ -240,6 +243,25 @@ TEST(ModbusTcp, ComesBackAfterTheServerWasAway) {
   const ModbusServer again{port};
   now += std::chrono::seconds{2};
   EXPECT_EQ(bus->read(holding(0, 1)).words, default_words(0, 1));
+}
+
+// select() writes out of bounds for a descriptor from FD_SETSIZE on: libmodbus would end the
+// program.
+TEST(ModbusTcp, FailsToConnectWhereItsDescriptorWouldBeOutOfReach) {
+  ModbusServer server;
+  const auto bus = bus_to(server.port());
+  rlimit limit{};
+  getrlimit(RLIMIT_NOFILE, &limit);
+  limit.rlim_cur = std::max<rlim_t>(limit.rlim_cur, std::min<rlim_t>(limit.rlim_max, 2048));
+  setrlimit(RLIMIT_NOFILE, &limit);
+  std::vector<int> taken;
+  while (taken.empty() || (taken.back() >= 0 && taken.back() < FD_SETSIZE + 8)) {
+    taken.push_back(dup(STDERR_FILENO));
+  }
+  EXPECT_EQ(bus->read(holding(0, 1)).failure, BusFailure::connection);
+  for (const int descriptor : taken) {
+    close(descriptor);
+  }
 }
 
 TEST(ModbusBusOf, RefusesRtuOverTcpInPlainWords) {
