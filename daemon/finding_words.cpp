@@ -1,0 +1,131 @@
+#include "daemon/finding_words.h"
+
+#include "daemon/figures.h"
+#include "daemon/names.h"
+
+#include <cmath>
+
+namespace lostwork {
+namespace {
+
+constexpr double percent = 100.0;
+constexpr double joules_per_kWh = 3.6e6;
+
+std::string onset_text(const OnsetInterval& onset, const WallClock& clock) {
+  const auto day = [&clock](Instant time) { return day_text(time, clock.now, clock.offset); };
+  std::string text = ", since " + day(onset.best);
+  if (day(onset.earliest) != day(onset.latest)) {
+    text += " (" + day(onset.earliest) + " to " + day(onset.latest) + ", 95 %)";
+  }
+  return text + '.';
+}
+
+std::string drift_headline(const Finding& finding, const WallClock& clock) {
+  const bool less = finding.size.value < 0.0;
+  const Measured size = scaled(finding.size, less ? -percent : percent);
+  return "Needs " + with_interval(size, "%") +
+         (less ? " less power than it used to" : " more power than it should") + ", like for like" +
+         onset_text(finding.onset, clock);
+}
+
+std::string place_sentence(const Finding& finding) {
+  if (!finding.component) {
+    return "It cannot be told which component loses it.";
+  }
+  const auto& change = finding.lost_change_W.at(static_cast<std::size_t>(*finding.component));
+  std::string sentence = "The " + std::string{text(*finding.component)} + " loses ";
+  if (change) {
+    sentence += with_interval(scaled(*change, info(Quantity::power).per_SI), "kW") + " more, ";
+  }
+  return sentence + with_interval(scaled(finding.component_share, percent), "%") +
+         " of the extra power. Part of that may be caused by another component.";
+}
+
+std::string cost_sentence(const Finding& finding) {
+  std::string sentence =
+      "So far it took " +
+      with_interval(scaled(finding.extra_energy_J, 1.0 / joules_per_kWh), "kWh") + " more";
+  if (finding.extra_cost) {
+    sentence += ", which cost " + with_interval(*finding.extra_cost, finding.currency);
+  }
+  if (finding.extra_co2_kg) {
+    sentence += " and released " + with_interval(*finding.extra_co2_kg, "kg") + " of CO2";
+  }
+  return sentence + '.';
+}
+
+}  // namespace
+
+std::string headline(const Finding& finding, const MachineView& machine, const WallClock& clock) {
+  if (finding.kind == FindingKind::efficiency_drift) {
+    return drift_headline(finding, clock);
+  }
+  if (finding.kind == FindingKind::law_broken) {
+    return "The readings as they are break the first or the second law" +
+           onset_text(finding.onset, clock);
+  }
+  const std::string sensor =
+      finding.suspect_sensors.empty()
+          ? "A sensor"
+          : "The sensor '" + text(finding.suspect_sensors.front(), machine) + "'";
+  return sensor + " does not fit the others" + onset_text(finding.onset, clock);
+}
+
+std::vector<std::string> consequences(const Finding& finding) {
+  std::vector<std::string> sentences;
+  if (finding.kind == FindingKind::efficiency_drift) {
+    sentences.push_back(place_sentence(finding));
+    sentences.push_back(cost_sentence(finding));
+    if (finding.compared_share < 1.0) {
+      sentences.push_back("Only " + fixed(finding.compared_share * percent, 0) +
+                          " % of the energy used since then could be compared.");
+    }
+  } else {
+    sentences.emplace_back(
+        "Until it is settled, figures that rest on this sensor cannot be trusted.");
+  }
+  return sentences;
+}
+
+std::string text(const Evidence& evidence) {
+  const QuantityInfo& q = info(evidence.quantity);
+  const double difference = evidence.after_SI - evidence.before_SI;
+  const Measured shown{.value = difference * q.per_SI, .u = evidence.u_SI * q.per_SI};
+  const std::string_view unit = q.unit == "degC" ? "K" : q.unit;
+  const int places = decimals(shown);
+  const std::string_view short_unit = shown_unit(q.unit);
+  const std::string tail = short_unit.empty() ? "" : ' ' + std::string{short_unit};
+  const auto edge = [&q, places, &tail](double value_SI) {
+    return fixed(value_SI * q.per_SI + q.offset, places) + tail;
+  };
+  return std::string{q.meaning} + ": " + edge(evidence.after_SI) + " where " +
+         edge(evidence.before_SI) + " was expected (difference " + with_interval(shown, unit) + ')';
+}
+
+std::string text(const RankedCause& cause, const MachineView& machine) {
+  if (cause.cause == Cause::sensor && cause.role) {
+    return "the sensor '" + text(*cause.role, machine) + "' is wrong";
+  }
+  return std::string{text(cause.cause)};
+}
+
+std::vector<std::string> cautions(const Finding& finding) {
+  std::vector<std::string> lines;
+  if (finding.state == FindingState::watch) {
+    lines.emplace_back("Not confirmed yet: it may still turn out to be nothing.");
+  }
+  if (finding.kind == FindingKind::efficiency_drift) {
+    if (!finding.cause_is_clear) {
+      lines.emplace_back("The causes below cannot yet be told apart with confidence.");
+    }
+    lines.emplace_back(
+        "It is a comparison of the machine with itself, worked out from its sensors: check at the "
+        "machine before money is spent.");
+  }
+  lines.emplace_back(
+      "Work on the refrigerant circuit only by a licensed or certified person, and under the local "
+      "code.");
+  return lines;
+}
+
+}  // namespace lostwork

@@ -1,0 +1,78 @@
+#include "daemon/finding_words.h"
+
+#include "tests/daemon/web/made_up_plant.h"
+
+#include <chrono>
+
+#include <gmock/gmock.h>
+#include <gtest/gtest.h>
+
+namespace lostwork {
+namespace {
+
+using testing::Contains;
+using testing::HasSubstr;
+
+WallClock utc_clock() {
+  return {.now = made_up_noon(), .offset = [](Instant /*time*/) { return std::chrono::hours{0}; }};
+}
+
+MachineView chiller() {
+  return made_up_plant().machines.front();
+}
+
+TEST(HeadlineOfADrift, HasSizeIntervalAndOnset) {
+  const MachineView machine = chiller();
+  EXPECT_EQ(headline(machine.findings.front(), machine, utc_clock()),
+            "Needs 6.1 % \u00b1 1.5 % (95 %) more power than it should, like for like, since 18 "
+            "April (15 April to 20 April, 95 %).");
+}
+
+TEST(HeadlineOfASensor, NamesIt) {
+  const MachineView machine = chiller();
+  Finding finding = machine.findings.front();
+  finding.kind = FindingKind::sensor_suspect;
+  finding.suspect_sensors = {Role::cold_out_temperature};
+  EXPECT_THAT(headline(finding, machine, utc_clock()),
+              HasSubstr("The sensor 'cold water leaving' does not fit the others"));
+}
+
+TEST(ConsequencesOfADrift, SayWhereItGoes) {
+  EXPECT_THAT(
+      consequences(chiller().findings.front()),
+      Contains(HasSubstr("The condenser loses 2.0 kW \u00b1 0.4 kW (95 %) more, 56 % \u00b1 "
+                         "10 % (95 %) of the extra power.")));
+}
+
+TEST(ConsequencesOfADrift, SayWhatItCost) {
+  EXPECT_THAT(consequences(chiller().findings.front()),
+              Contains("So far it took 812 kWh \u00b1 220 kWh (95 %) more, which cost 203 EUR "
+                       "\u00b1 56 EUR (95 %)."));
+}
+
+TEST(ConsequencesOfADrift, SayHowMuchCouldBeCompared) {
+  EXPECT_THAT(consequences(chiller().findings.front()), Contains(HasSubstr("Only 91 %")));
+}
+
+TEST(TextOfEvidence, GivesADifferenceOfTemperaturesInKelvin) {
+  const Evidence evidence{
+      .quantity = Quantity::condensing, .before_SI = 309.15, .after_SI = 311.35, .u_SI = 0.3};
+  EXPECT_THAT(
+      text(evidence),
+      HasSubstr("38.2 \u00b0C where 36.0 \u00b0C was expected (difference 2.2 K \u00b1 0.6 K (95 "
+                "%))"));
+}
+
+TEST(CautionsOfADrift, DeferToLicensedWorkAndLocalCode) {
+  EXPECT_THAT(cautions(chiller().findings.front()),
+              Contains(HasSubstr("licensed or certified person, and under the local code")));
+}
+
+TEST(CautionsOfAWatchedFinding, SayThatItIsNotConfirmed) {
+  Finding finding = chiller().findings.front();
+  finding.state = FindingState::watch;
+  EXPECT_THAT(cautions(finding), Contains(HasSubstr("Not confirmed yet")));
+}
+
+}  // namespace
+}  // namespace lostwork
