@@ -80,10 +80,10 @@ struct Fluid {
   double gas_constant_JkgK;  // as the paper's own equation uses it
   double reducing_T_K;
   double reducing_rho_kgm3;
-  double critical_T_K;  // of the equation itself, where the first two density derivatives of p
+  double critical_T_K;   // of the equation itself, where the first two density derivatives of p
   double critical_p_Pa;  // vanish: what the papers print differs in the last digits
   double critical_rho_kgm3;
-  double min_T_K;            // limits of the equation as published
+  double min_T_K;  // limits of the equation as published
   double max_T_K;
   double max_p_Pa;
   double densest_kgm3;  // above any density within the limits: only bounds the search
