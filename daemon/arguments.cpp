@@ -28,6 +28,15 @@ std::optional<std::string_view> Arguments::value(std::string_view option) const 
   return found == given.end() ? std::nullopt : std::optional{found->second};
 }
 
+std::vector<std::string_view> Arguments::all(std::string_view option) const {
+  std::vector<std::string_view> out;
+  const auto [first, last] = given.equal_range(option);
+  for (auto at = first; at != last; ++at) {
+    out.push_back(at->second);
+  }
+  return out;
+}
+
 tl::expected<Arguments, std::string> parse(const CommandLine& command,
                                            std::span<const std::string_view> arguments) {
   Arguments out;
@@ -51,9 +60,10 @@ tl::expected<Arguments, std::string> parse(const CommandLine& command,
       return tl::unexpected{std::string{argument} + ": needs a value, " +
                             std::string{option->value}};
     }
-    if (!out.given.emplace(option->name, option->value.empty() ? "" : arguments[++i]).second) {
+    if (!option->repeats && out.has(option->name)) {
       return tl::unexpected{std::string{argument} + ": given twice"};
     }
+    out.given.emplace(option->name, option->value.empty() ? "" : arguments[++i]);
   }
   if (out.values.size() > command.most_values) {
     return tl::unexpected{std::string{out.values[command.most_values]} +

@@ -19,6 +19,7 @@ struct Option {
   std::string_view value;    // "FILE"; empty: a flag
   std::string_view meaning;  // one line
   bool required = false;
+  bool repeats = false;  // may be given several times
 };
 
 struct CommandLine {
@@ -29,12 +30,15 @@ struct CommandLine {
 };
 
 struct Arguments {
-  bool help = false;                                   // asked for; nothing else was checked then
-  std::map<std::string_view, std::string_view> given;  // by option name; a flag's value is empty
-  std::vector<std::string_view> values;                // in their order
+  bool help = false;  // asked for; nothing else was checked then
+  // By option name; a flag has an empty value.
+  std::multimap<std::string_view, std::string_view> given;
+  std::vector<std::string_view> values;  // in their order
 
   [[nodiscard]] bool has(std::string_view option) const { return given.contains(option); }
   [[nodiscard]] std::optional<std::string_view> value(std::string_view option) const;
+  // Of an option that repeats, in their order.
+  [[nodiscard]] std::vector<std::string_view> all(std::string_view option) const;
 };
 
 // The error is one sentence: what was found, what is allowed.
