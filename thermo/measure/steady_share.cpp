@@ -1,6 +1,8 @@
 #include "thermo/measure/steady_share.h"
 
 #include <algorithm>
+#include <cmath>
+#include <functional>
 
 namespace lostwork {
 namespace {
@@ -21,6 +23,37 @@ bool is_of_a_signal(UnsteadyCause cause) {
 }
 
 }  // namespace
+
+std::string_view text(UnsteadyCause cause) {
+  static constexpr std::array<std::string_view, static_cast<std::size_t>(UnsteadyCause::count)>
+      texts{"nothing",
+            "starts and stops",
+            "more than six starts an hour",
+            "the quarter of an hour after each start",
+            "runs too short for ten whole minutes",
+            "missing samples",
+            "a signal that goes up or down",
+            "a signal that hunts"};
+  return texts.at(static_cast<std::size_t>(cause));
+}
+
+std::string text(const SteadyShare& share, const MachineModel& model) {
+  const auto part = share.share();
+  if (!part) {
+    return {};
+  }
+  std::string out{"Steady for "};
+  out.append(std::to_string(std::lround(100.0 * *part)))
+      .append(" % of its running time of the last week.");
+  if (share.main_cause == UnsteadyCause::none) {
+    return out;
+  }
+  out.append(" Most of the rest was lost to ").append(text(share.main_cause));
+  if (share.point && *share.point < model.points.size()) {
+    out.append(" (").append(name(model.points[*share.point].role)).append(")");
+  }
+  return out.append(".");
+}
 
 std::optional<double> SteadyShare::share() const {
   if (run_time <= Span{0}) {

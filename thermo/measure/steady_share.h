@@ -1,12 +1,15 @@
 // How much of its running time a machine was steady, and what the rest was lost to.
 #pragma once
 
+#include "thermo/cycle/machine_model.h"
 #include "thermo/reading.h"
 
 #include <array>
 #include <cstddef>
 #include <cstdint>
 #include <optional>
+#include <string>
+#include <string_view>
 #include <vector>
 
 namespace lostwork {
@@ -23,6 +26,8 @@ enum class UnsteadyCause : std::uint8_t {
   scatter = 7,   // a signal hunts
   count
 };
+
+[[nodiscard]] std::string_view text(UnsteadyCause cause);  // "a signal that hunts"
 
 struct SteadyVerdict {
   UnsteadyCause cause = UnsteadyCause::filling;
@@ -49,6 +54,10 @@ struct SteadyShare {
   [[nodiscard]] std::optional<double> share() const;
 };
 [[nodiscard]] SteadyShare steady_share(const std::vector<SteadyDay>& days);
+
+// "Steady for 3 % of its running time of the last week. Most of the rest was lost to a signal that
+// hunts (cold.out.temperature)." Empty before the machine ran.
+[[nodiscard]] std::string text(const SteadyShare& share, const MachineModel& model);
 
 // Adds `length` of running before `now`; forgets days older than a week. `points`: of the model.
 void count_running(std::vector<SteadyDay>& days, std::size_t points, Instant now, Span length,
