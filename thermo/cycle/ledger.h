@@ -7,19 +7,29 @@
 // The reference temperature T0 is the hot mean for cooling and the cold mean for heating, so that
 // the stream that only carries heat away drops out of the ledger.
 //
-// Refrigerant flow, in this order, chosen by which points the machine has and never changed by a
-// bad reading: from the product meter (closest to what is wanted), from the other stream's meter,
-// from the power balance with the stated casing loss. The product meter's route leaves nothing
-// unaccounted by its nature: what it disagrees about with the power meter shows in the casing
-// heat, and with the other meter in the energy residual. Where only the other stream is metered
-// the product heat follows from the energy balance.
+// Refrigerant flow m, in this order, chosen by which points the machine has and never changed by a
+// bad reading: from the product meter, from the other stream's meter, from the power balance with
+// the stated casing loss. A product meter that is not usable passes its reason on.
+// Where both streams are metered, m = w m_product + (1 - w) m_other, with the constant weight that
+// makes u(m) least, correlation included, kept within 0..1; the product meter alone (w = 1) where
+// no uncertainty is stated, and for as long as the other meter or its refrigerant states are not
+// usable: a figure that only makes m surer does not cost the components when it is missing.
+//
+// The components' lines and the casing heat use the heats of the refrigerant, m times a difference
+// of enthalpy; the reversible power uses the metered product heat. So unaccounted is what product
+// meter and refrigerant disagree about, in work: (m (h1e - h4) - Q_L) (T_H / T_L - 1) for cooling,
+// (m (h2 - h3) - Q_H) (1 - T_L / T_H) for heating, > 0 where the product meter reads low. It is 0
+// by nature where m comes from one meter alone. What the meters disagree about, as heat, is the
+// energy residual.
+// Where only the other stream is metered the product heat follows from the energy balance.
 // Casing heat is W - m (h2 - h1), less what the lines take up; the stated share of the power where
 // that cannot be computed.
 // The suction line is a component only where the evaporator's outlet temperature is read: else the
 // evaporator reaches to the compressor, and entropy_lines and lost_lines have no sensor. Total and
 // ledger then close with the other four.
-// entropy_total and lost_total are the components' sums where all four exist, else the figure
-// from the two reservoirs with a closed energy balance (the two agree).
+// entropy_total and lost_total are the components' sums where all four exist, which is the figure
+// of the two reservoirs with the refrigerant's heats; else the figure of the reservoirs with the
+// metered product heat and a closed energy balance.
 //
 // Uncertainty: GUM, first order, from the readings' own, with the share that a matched pair has in
 // common, and the casing loss where it is an input. Pure, and safe from any thread.

@@ -2,6 +2,8 @@
 
 #include "thermo/role.h"
 
+#include <algorithm>
+
 namespace lostwork {
 namespace {
 
@@ -11,7 +13,8 @@ Refusal refuse(ReasonCode code, Role role, double value_SI) {
   };
 }
 
-// Which meter the balance is built on: a fact of the machine's points, not of the moment.
+// Which meter the balance is built on, the product's own before the other: a fact of the machine's
+// points, not of the moment.
 enum class Route { cold_meter, hot_meter, power_meter };
 
 Route route(const MachineModel& model) {
@@ -34,29 +37,67 @@ Result<Number> flow_of(const Number& heat_W, const Number& rise_Jkg, Role blame)
   return heat_W / rise_Jkg;
 }
 
-Result<Number> flow_kgs(Route by, const Inputs& inputs, const MeteredMachine& metered,
-                        const CircuitStates& states) {
-  switch (by) {
-    case Route::cold_meter:
-      return combine(
-          [](const Number& Q, const Node& from, const Node& to) {
-            return flow_of(Q, to.h_Jkg - from.h_Jkg, Role::liquid_temperature);
-          },
-          metered.cold_heat_W, states.valve_out, states.evaporator_out);
-    case Route::hot_meter:
-      return combine(
-          [](const Number& Q, const Node& from, const Node& to) {
-            return flow_of(Q, from.h_Jkg - to.h_Jkg, Role::liquid_temperature);
-          },
-          metered.hot_heat_W, states.discharge, states.liquid);
-    case Route::power_meter: break;
-  }
+Result<Number> flow_by_cold_meter_kgs(const MeteredMachine& metered, const CircuitStates& states) {
+  return combine(
+      [](const Number& Q, const Node& from, const Node& to) {
+        return flow_of(Q, to.h_Jkg - from.h_Jkg, Role::liquid_temperature);
+      },
+      metered.cold_heat_W, states.valve_out, states.evaporator_out);
+}
+
+Result<Number> flow_by_hot_meter_kgs(const MeteredMachine& metered, const CircuitStates& states) {
+  return combine(
+      [](const Number& Q, const Node& from, const Node& to) {
+        return flow_of(Q, from.h_Jkg - to.h_Jkg, Role::liquid_temperature);
+      },
+      metered.hot_heat_W, states.discharge, states.liquid);
+}
+
+Result<Number> flow_by_power_meter_kgs(const Inputs& inputs, const MeteredMachine& metered,
+                                       const CircuitStates& states) {
   return combine(
       [&](const Number& W, const Node& from, const Node& to) {
         return flow_of(W * (1.0 - inputs.casing_loss), to.h_Jkg - from.h_Jkg,
                        Role::discharge_temperature);
       },
       metered.power_W, states.suction, states.discharge);
+}
+
+// Share of `a` in the mean of two measurements of one quantity that has the least variance (the
+// best linear unbiased estimate; Lyons, Gibaut & Clifford 1988, doi:10.1016/0168-9002(88)90018-6).
+// Two that share an error may ask for more than all of one: the mean stays between them. Without
+// any uncertainty `a` is taken.
+double share_of_first(const Errors& errors, const Number& a, const Number& b) {
+  const double common = errors.covariance(a, b);
+  const double a_alone = errors.covariance(a, a) - common;
+  const double b_alone = errors.covariance(b, b) - common;
+  if (!(a_alone + b_alone > 0.0)) {
+    return 1.0;
+  }
+  return std::clamp(b_alone / (a_alone + b_alone), 0.0, 1.0);
+}
+
+// The product's meter and, where it tells something, the other one.
+Result<Number> flow_by_meters_kgs(const Errors& errors, const Result<Number>& product,
+                                  const Result<Number>& other) {
+  if (!product || !other) {
+    return product;
+  }
+  const double share = share_of_first(errors, *product, *other);
+  return share * *product + (1.0 - share) * *other;
+}
+
+Result<Number> flow_kgs(Duty duty, Route by, const Inputs& inputs, const MeteredMachine& metered,
+                        const CircuitStates& states) {
+  if (by == Route::power_meter) {
+    return flow_by_power_meter_kgs(inputs, metered, states);
+  }
+  const Result<Number> cold = flow_by_cold_meter_kgs(metered, states);
+  const Result<Number> hot = flow_by_hot_meter_kgs(metered, states);
+  if (by == Route::cold_meter) {
+    return duty == Duty::cooling ? flow_by_meters_kgs(inputs.errors, cold, hot) : cold;
+  }
+  return duty == Duty::cooling ? hot : flow_by_meters_kgs(inputs.errors, hot, cold);
 }
 
 // What the suction line takes up.
@@ -170,7 +211,7 @@ MachineBalance machine_balance(const MachineModel& model, const Inputs& inputs,
                                const MeteredMachine& metered, const CircuitStates& states) {
   const Route by = route(model);
   MachineBalance balance;
-  balance.flow_kgs = flow_kgs(by, inputs, metered, states);
+  balance.flow_kgs = flow_kgs(model.duty, by, inputs, metered, states);
   if (model.casing_T_K) {
     balance.around_T_K = Number{.value = *model.casing_T_K, .by = {}};
   } else {

@@ -28,7 +28,7 @@ struct ComponentEntropy {
 };
 
 struct MachineBalance {
-  Result<Number> flow_kgs;    // refrigerant
+  Result<Number> flow_kgs;    // refrigerant: the mean of least variance of both meters' figures
   Result<Number> around_T_K;  // of the casing's surroundings
   Result<Number> casing_W;    // heat from the casing, less what the suction line takes up
   Result<Number> product_W;   // useful heat: metered, or from the balance where only the other

@@ -186,6 +186,35 @@ TEST_P(StatedUncertainty, IsTheScatterOfTheTrials) {
   });
 }
 
+std::vector<Setting> settings_with_both_meters() {
+  std::vector<Setting> both = settings();
+  std::erase_if(both, [](const Setting& setting) {
+    const MachineModel model = setting.machine().model;
+    return !model.index_of(Role::cold_flow) || !model.index_of(Role::hot_flow);
+  });
+  return both;
+}
+
+class UnaccountedWork : public testing::TestWithParam<Setting> {};
+
+INSTANTIATE_TEST_SUITE_P(Machines, UnaccountedWork, testing::ValuesIn(settings_with_both_meters()),
+                         [](const auto& param) { return param.param.name; });
+
+// In truth there is none; the shares are those above.
+TEST_P(UnaccountedWork, IsNothingWithinItsUncertaintyWhereTheMetersAgree) {
+  constexpr int trials = 4000;
+  const TestMachine machine = GetParam().machine();
+  Trials random{machine};
+  int inside = 0;
+  for (int i = 0; i < trials; ++i) {
+    const Assessment a = random.next();
+    inside += std::abs(value(a, unaccounted)) <= 2.0 * u(a, unaccounted) ? 1 : 0;
+  }
+  RecordProperty("inside", inside);
+  EXPECT_GE(inside, 93 * trials / 100);
+  EXPECT_LE(inside, 97 * trials / 100);
+}
+
 // A central difference over a hundredth of u errs by rounding: 1e-9 of the quantity over the step;
 // and by curvature, (u/100)^2: below 1e-5 of every sensitivity that matters.
 TEST_P(StatedUncertainty, IsBuiltOnTheDerivatives) {
