@@ -14,4 +14,10 @@ std::string text(const std::string& file, const Problem& problem) {
   return out + ": " + problem.allowed;
 }
 
+void tell(std::ostream& out, const std::string& file, const Problems& problems) {
+  for (const Problem& problem : problems) {
+    out << text(file, problem) << '\n';
+  }
+}
+
 }  // namespace lostwork

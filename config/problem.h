@@ -2,6 +2,7 @@
 #pragma once
 
 #include <cstdint>
+#include <ostream>
 #include <string>
 #include <vector>
 
@@ -18,5 +19,8 @@ using Problems = std::vector<Problem>;
 
 // "plant.toml:12: point[3].register = -1: allowed is a whole number from 0 to 65535"
 [[nodiscard]] std::string text(const std::string& file, const Problem& problem);
+
+// A line each.
+void tell(std::ostream& out, const std::string& file, const Problems& problems);
 
 }  // namespace lostwork

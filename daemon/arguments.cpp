@@ -94,6 +94,23 @@ std::string help_text(const CommandLine& command) {
   return out.str();
 }
 
+tl::expected<Arguments, int> begin_command(const CommandLine& command,
+                                           std::span<const std::string_view> arguments,
+                                           std::ostream& out, std::ostream& err) {
+  auto given = parse(command, arguments);
+  if (!given) {
+    const std::string_view program_and_command =
+        command.usage.substr(0, command.usage.find(' ', command.usage.find(' ') + 1));
+    err << program_and_command << ": " << given.error() << '\n';
+    return tl::unexpected{2};
+  }
+  if (given->help) {
+    out << help_text(command);
+    return tl::unexpected{0};
+  }
+  return std::move(*given);
+}
+
 tl::expected<double, std::string> number(std::string_view option, std::string_view value,
                                          double min, double max) {
   double out = 0.0;

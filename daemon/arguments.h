@@ -5,6 +5,7 @@
 #include <cstddef>
 #include <map>
 #include <optional>
+#include <ostream>
 #include <span>
 #include <string>
 #include <string_view>
@@ -45,6 +46,12 @@ struct Arguments {
 [[nodiscard]] tl::expected<Arguments, std::string> parse(
     const CommandLine& command, std::span<const std::string_view> arguments);
 [[nodiscard]] std::string help_text(const CommandLine& command);
+
+// How every command begins: parses, writes help to `out` and bad usage to `err`. An exit code where
+// that was all.
+[[nodiscard]] tl::expected<Arguments, int> begin_command(
+    const CommandLine& command, std::span<const std::string_view> arguments, std::ostream& out,
+    std::ostream& err);
 
 // A finite number within the limits, or a sentence that names the option, the value and what is
 // allowed.

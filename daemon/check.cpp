@@ -140,14 +140,9 @@ void print_safety(const PlantConfig& plant, std::ostream& out) {
 
 int check_command(std::span<const std::string_view> arguments, std::ostream& out,
                   std::ostream& err) {
-  const auto given = parse(command, arguments);
+  const auto given = begin_command(command, arguments, out, err);
   if (!given) {
-    err << "lostwork check: " << given.error() << '\n';
-    return 2;
-  }
-  if (given->help) {
-    out << help_text(command);
-    return 0;
+    return given.error();
   }
   if (given->has("--keys")) {
     print_keys(out);
@@ -160,9 +155,7 @@ int check_command(std::span<const std::string_view> arguments, std::ostream& out
   }
   const auto plant = load_plant(*file);
   if (!plant) {
-    for (const Problem& problem : plant.error()) {
-      err << text(std::string{*file}, problem) << '\n';
-    }
+    tell(err, std::string{*file}, plant.error());
     return 2;
   }
   out << *file << ": good; " << plant->machines.size() << " machines, "

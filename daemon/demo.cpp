@@ -243,7 +243,7 @@ void demonstrate(const DemoOptions& demo, Log& log, std::ostream& err) {
   const PlantConfig config = demo_config(demo, demo.database.value_or(folder.path() / "plant.db"));
   Plant plant{demo.plant};
   log.line(Severity::info, "Running a past season of Tern Quay Dairy (an invented site), " +
-                               iso_text(plant.time()) + " to " + iso_text(demo.live_from) + ".");
+                               iso_text(demo.plant.start) + " to " + iso_text(demo.live_from) + ".");
   past_season(config, plant, demo, err);
   run_live(config, std::move(plant), demo, log);
 }
@@ -252,14 +252,9 @@ void demonstrate(const DemoOptions& demo, Log& log, std::ostream& err) {
 
 int demo_command(std::span<const std::string_view> arguments, std::ostream& out,
                  std::ostream& err) {
-  const auto given = parse(command, arguments);
+  const auto given = begin_command(command, arguments, out, err);
   if (!given) {
-    err << "lostwork demo: " << given.error() << '\n';
-    return 2;
-  }
-  if (given->help) {
-    out << help_text(command);
-    return 0;
+    return given.error();
   }
   Log log{err, false};
   try {

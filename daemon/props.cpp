@@ -190,14 +190,9 @@ tl::expected<Question, std::string> question_of(const Arguments& arguments) {
 
 int props_command(std::span<const std::string_view> arguments, std::ostream& out,
                   std::ostream& err) {
-  const auto parsed = parse(command, arguments);
+  const auto parsed = begin_command(command, arguments, out, err);
   if (!parsed) {
-    err << "lostwork props: " << parsed.error() << '\n';
-    return 2;
-  }
-  if (parsed->help) {
-    out << help_text(command);
-    return 0;
+    return parsed.error();
   }
   if (parsed->has("--list")) {
     write_list(out);

@@ -186,21 +186,14 @@ int replay(const Arguments& given, const PlantConfig& plant, std::ostream& out, 
 
 int replay_command(std::span<const std::string_view> arguments, std::ostream& out,
                    std::ostream& err) {
-  const auto given = parse(command, arguments);
+  const auto given = begin_command(command, arguments, out, err);
   if (!given) {
-    err << "lostwork replay: " << given.error() << '\n';
-    return 2;
-  }
-  if (given->help) {
-    out << help_text(command);
-    return 0;
+    return given.error();
   }
   const std::filesystem::path config{*given->value("--config")};
   const auto plant = load_plant(config);
   if (!plant) {
-    for (const Problem& problem : plant.error()) {
-      err << text(config.string(), problem) << '\n';
-    }
+    tell(err, config.string(), plant.error());
     return 2;
   }
   try {

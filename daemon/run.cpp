@@ -28,14 +28,9 @@ constexpr CommandLine command{.usage = "lostwork run --config FILE",
 }  // namespace
 
 int run_command(std::span<const std::string_view> arguments, std::ostream& out, std::ostream& err) {
-  const auto given = parse(command, arguments);
+  const auto given = begin_command(command, arguments, out, err);
   if (!given) {
-    err << "lostwork run: " << given.error() << '\n';
-    return 2;
-  }
-  if (given->help) {
-    out << help_text(command);
-    return 0;
+    return given.error();
   }
   LoopOptions loop;
   if (const auto text = given->value("--seconds")) {
@@ -50,9 +45,7 @@ int run_command(std::span<const std::string_view> arguments, std::ostream& out, 
   loop.plant_file = std::filesystem::path{*given->value("--config")};
   const auto plant = load_plant(*loop.plant_file);
   if (!plant) {
-    for (const Problem& problem : plant.error()) {
-      err << text(loop.plant_file->string(), problem) << '\n';
-    }
+    tell(err, loop.plant_file->string(), plant.error());
     return 2;
   }
   Log log{err, std::getenv("JOURNAL_STREAM") != nullptr};
