@@ -1,0 +1,172 @@
+// The simulated plant's seasons through advance(): what is found, when, and whose fault it is said
+// to be. The plant's physics are not those of the baseline (sensors/demo_plant/plant.h). Goals E6
+// and E7.
+#include "daemon/advance.h"
+#include "sensors/demo_plant/plant_scan.h"
+
+#include <chrono>
+#include <memory>
+#include <optional>
+#include <string_view>
+#include <utility>
+#include <vector>
+
+#include <gmock/gmock.h>
+#include <gtest/gtest.h>
+
+namespace lostwork {
+namespace {
+
+using namespace std::chrono_literals;
+using std::chrono::days;
+using std::chrono::sys_days;
+using ::testing::Contains;
+using ::testing::Each;
+using ::testing::Field;
+using ::testing::Not;
+
+constexpr Instant season_start = sys_days{std::chrono::March / 2 / 2026};
+constexpr Instant fault_begins = sys_days{std::chrono::May / 4 / 2026};
+
+PlantOptions plant_with(std::string_view fault) {
+  PlantOptions options;
+  options.start = season_start;
+  if (!fault.empty()) {
+    options.faults.push_back(parse_fault(fault, plant_fault_targets()));
+  }
+  return options;
+}
+
+// One machine's way through a season, a scan a minute.
+class Season {
+ public:
+  Season(const PlantOptions& options, PlantMachine machine)
+      : plant_{options}, machine_{machine}, model_{step_model(minutely(machine), AlarmRules{})} {
+    state_ = fitted(model_, MachineState{});
+  }
+
+  void run_until(Instant end) {
+    while (plant_.time() < end) {
+      plant_.step(60s - plant_.time().time_since_epoch() % 60s);
+      MachineStep step = advance(model_, std::move(state_), plant_scan(plant_, machine_));
+      state_ = std::move(step.next);
+      for (const Finding& finding : step.findings) {
+        findings_.push_back(finding);
+      }
+      for (const AlarmEvent& event : step.alarms) {
+        alarms_.push_back(event);
+      }
+    }
+  }
+
+  // Stored and taken up again, as at a restart.
+  void restart() { state_ = load(model_, save(state_)).value(); }
+
+  [[nodiscard]] std::vector<std::uint8_t> bytes() const { return save(state_); }
+  [[nodiscard]] const std::vector<AlarmEvent>& alarms() const { return alarms_; }
+  // Of that kind, as it was when it was first confirmed; none: never.
+  [[nodiscard]] std::optional<Finding> confirmed(FindingKind kind) const {
+    for (const Finding& finding : findings_) {
+      if (finding.kind == kind && finding.state == FindingState::active) {
+        return finding;
+      }
+    }
+    return std::nullopt;
+  }
+  [[nodiscard]] const std::vector<Finding>& findings() const { return findings_; }
+
+ private:
+  static MachineModel minutely(PlantMachine machine) {
+    MachineModel model = plant_machine_model(machine);
+    model.scan_period = 60s;
+    return model;
+  }
+
+  Plant plant_;
+  PlantMachine machine_;
+  StepModel model_;
+  MachineState state_;
+  std::vector<Finding> findings_;
+  std::vector<AlarmEvent> alarms_;
+};
+
+auto of_kind(AlarmKind kind) {
+  return Field(&AlarmEvent::kind, kind);
+}
+
+// Grows until 13 June, when it costs 5 % at the machine's rating point, and stays.
+constexpr std::string_view fouling =
+    "condenser_fouling:machine=chiller-1,from=2026-05-04,power=5,days=40";
+
+class Fouling : public ::testing::Test {
+ protected:
+  static void SetUpTestSuite() {
+    season = std::make_unique<Season>(plant_with(fouling), PlantMachine::chiller);
+    season->run_until(fault_begins + days{40 + 14});
+  }
+  static void TearDownTestSuite() { season.reset(); }
+  static std::unique_ptr<Season> season;
+};
+std::unique_ptr<Season> Fouling::season;
+
+TEST_F(Fouling, IsFoundWithinFourteenDaysOfCostingFivePercent) {
+  const auto found = season->confirmed(FindingKind::efficiency_drift);
+  ASSERT_TRUE(found);
+  EXPECT_GT(*found->confirmed, fault_begins);
+  EXPECT_LE(*found->confirmed, fault_begins + days{40 + 14});
+}
+
+TEST_F(Fouling, IsNamedTheCondensers) {
+  const auto found = season->confirmed(FindingKind::efficiency_drift);
+  ASSERT_TRUE(found);
+  EXPECT_EQ(found->component, Component::condenser);
+  EXPECT_EQ(found->causes.at(0).cause, Cause::condenser_fouled);
+}
+
+TEST_F(Fouling, HasAnOnsetIntervalThatHoldsTheTruth) {
+  ASSERT_FALSE(season->findings().empty());
+  const Finding& last = season->findings().back();
+  EXPECT_LE(last.onset.earliest, fault_begins);
+  EXPECT_GE(last.onset.latest, fault_begins);
+}
+
+TEST_F(Fouling, IsNotCalledASensor) {
+  EXPECT_THAT(season->alarms(), Not(Contains(of_kind(AlarmKind::sensor_suspect))));
+}
+
+TEST(HealthyYear, OfTheChillerRaisesNoAlarm) {
+  Season year{plant_with(""), PlantMachine::chiller};
+  year.run_until(season_start + days{365});
+  EXPECT_TRUE(year.alarms().empty());
+}
+
+TEST(HealthyYear, OfTheHeatPumpRaisesNoAlarm) {
+  Season year{plant_with(""), PlantMachine::heat_pump};
+  year.run_until(season_start + days{365});
+  EXPECT_TRUE(year.alarms().empty());
+}
+
+TEST(ADriftingSensor, IsCalledASensorAndNoFaultOfTheMachine) {
+  Season season{plant_with("sensor_drift:sensor=ch1_cold_out,from=2026-05-04,rate=0.02"),
+                PlantMachine::chiller};
+  season.run_until(fault_begins + days{30});
+  const auto found = season.confirmed(FindingKind::sensor_suspect);
+  ASSERT_TRUE(found);
+  EXPECT_EQ(found->suspect_sensors.at(0), Role::cold_out_temperature);
+  EXPECT_THAT(season.alarms(), Each(Not(of_kind(AlarmKind::drift))));
+}
+
+TEST(ARestart, InTheMiddleChangesNoLaterResult) {
+  Season straight{plant_with(fouling), PlantMachine::chiller};
+  Season restarted{plant_with(fouling), PlantMachine::chiller};
+  const Instant middle = fault_begins + days{20} + 7h + 23min;
+  straight.run_until(fault_begins + days{40});
+  restarted.run_until(middle);
+  restarted.restart();
+  restarted.run_until(fault_begins + days{40});
+  EXPECT_EQ(straight.bytes(), restarted.bytes());
+  EXPECT_EQ(straight.alarms(), restarted.alarms());
+}
+
+}  // namespace
+}  // namespace lostwork
