@@ -86,7 +86,7 @@ inline constexpr std::array machine{
                       0, evaporators},
     Key<MachineEntry>{             "refrigerant",              &MachineEntry::refrigerant,                        "see `lostwork props --list`",
                       true},
-    Key<MachineEntry>{                  "scan_s",                   &MachineEntry::scan_s,                                   "period of a scan", false, 1, 75},
+    Key<MachineEntry>{                  "scan_s",                   &MachineEntry::scan_s,                                   "period of a scan", false, 1, 3600},
     Key<MachineEntry>{          "rated_power_kW",           &MachineEntry::rated_power_kW,                           "electrical, at full load",
                       true, 0.01, 100000},
     Key<MachineEntry>{             "casing_loss",                                 Other{},
