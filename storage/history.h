@@ -54,11 +54,11 @@ struct JournalRow {
 };
 
 struct JournalQuery {
-  std::optional<std::string_view> machine;  // only of this one; "" = the plant's own
-  std::optional<std::int64_t> before;       // only rows with a smaller number: the next page
-  std::optional<Instant> from;
-  std::optional<Instant> to;  // exclusive
-  std::size_t limit = 100;    // 1 to 5000
+  std::optional<std::string_view> machine{};  // only of this one; "" = the plant's own
+  std::optional<std::int64_t> before{};       // only rows with a smaller number: the next page
+  std::optional<Instant> from{};
+  std::optional<Instant> to{};  // exclusive
+  std::size_t limit = 100;      // 1 to 5000
 };
 
 struct SavedState {

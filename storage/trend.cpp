@@ -25,9 +25,12 @@ Span width_of(Instant from, Instant to, std::size_t max_points) {
       return width;
     }
   }
-  // One more than fits, for the part of a bucket at each end.
-  const auto points = static_cast<std::int64_t>(std::max<std::size_t>(max_points, 2));
-  return ((to - from) / day / (points - 1) + 1) * day;
+  // Ends at the latest where one bucket begins in 1970 and holds all.
+  Span width = widths.back();
+  while (count_of(width, from, to) > max_points) {
+    width *= 2;
+  }
+  return width;
 }
 
 Span source_of(Span width) {

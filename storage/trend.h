@@ -21,7 +21,7 @@ struct BucketPlan {
 };
 
 // The narrowest buckets from a list of customary widths with which [from, to) takes at most
-// `max_points` (at least 1); days in whole numbers where the list ends. from < to, both storable.
+// `max_points` (at least 1); the last one's doubles where the list ends. from < to, both storable.
 [[nodiscard]] BucketPlan plan_of(Instant from, Instant to, std::size_t max_points);
 
 // periods: of the source's length, in any order; those outside the plan are left out.
