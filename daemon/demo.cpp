@@ -243,7 +243,8 @@ void demonstrate(const DemoOptions& demo, Log& log, std::ostream& err) {
   const PlantConfig config = demo_config(demo, demo.database.value_or(folder.path() / "plant.db"));
   Plant plant{demo.plant};
   log.line(Severity::info, "Running a past season of Tern Quay Dairy (an invented site), " +
-                               iso_text(demo.plant.start) + " to " + iso_text(demo.live_from) + ".");
+                               iso_text(demo.plant.start) + " to " + iso_text(demo.live_from) +
+                               ".");
   past_season(config, plant, demo, err);
   run_live(config, std::move(plant), demo, log);
 }
