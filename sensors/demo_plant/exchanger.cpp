@@ -5,10 +5,10 @@
 namespace lostwork {
 
 double conductance_WK(const ExchangerParameters& exchanger, double water_kgs, double fouling) {
-  const double clean = exchanger.water_resistance_KW + exchanger.refrigerant_resistance_KW;
+  const double clean = exchanger.water_resistance_SI + exchanger.refrigerant_resistance_SI;
   const double water =
-      exchanger.water_resistance_KW * std::pow(exchanger.rated_kgs / water_kgs, 0.8);
-  return 1.0 / (water + exchanger.refrigerant_resistance_KW + fouling * clean);
+      exchanger.water_resistance_SI * std::pow(exchanger.rated_kgs / water_kgs, 0.8);
+  return 1.0 / (water + exchanger.refrigerant_resistance_SI + fouling * clean);
 }
 
 double effectiveness(double ntu) {

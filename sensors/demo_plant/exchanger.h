@@ -8,10 +8,10 @@ namespace lostwork {
 
 // Resistances at the rated water flow; together they are 1/UA of the clean exchanger.
 struct ExchangerParameters {
-  double water_resistance_KW;  // K/W; goes with flow^-0.8 (turbulent tube flow, Dittus-Boelter)
-  double refrigerant_resistance_KW;  // K/W; wall included
+  double water_resistance_SI;  // K/W; goes with flow^-0.8 (turbulent tube flow, Dittus-Boelter)
+  double refrigerant_resistance_SI;  // K/W; wall included
   double rated_kgs;                  // water
-  double heat_capacity_JK;           // J/K: metal, liquid refrigerant, water inside
+  double heat_capacity_SI;           // J/K: metal, liquid refrigerant, water inside
 };
 
 // UA in W/K; fouling is the added resistance over the clean one at rated flow.

@@ -84,8 +84,8 @@ PointSpec with(PointSpec p, const Accuracy& accuracy, const PointRange& range, F
 struct HeatMeter {
   std::string prefix;  // "ch1_cold"
   PlantMachine machine;
-  Role in_T;
-  Role out_T;
+  Role in_role;
+  Role out_role;
   Role flow;
   std::uint16_t address;
   std::uint64_t number;
@@ -110,8 +110,8 @@ void add_heat_meter(std::vector<Instrument>& all, const HeatMeter& meter) {
     all.push_back(made(std::move(p), temperature_noise, truth_T_K));
     all.back().pair = PairError{.number = meter.number, .difference_limit = pair_limit_K};
   };
-  temperature("_in", meter.in_T, 2, meter.in_T_K);
-  temperature("_out", meter.out_T, 3, meter.out_T_K);
+  temperature("_in", meter.in_role, 2, meter.in_T_K);
+  temperature("_out", meter.out_role, 3, meter.out_T_K);
   all.push_back(
       made(with(point(meter.prefix + "_flow", meter.machine, meter.flow, Unit::m3_h),
                 PercentOfReading{.percent = 1.0}, {.min = 0.0, .max = 150.0},
@@ -126,8 +126,8 @@ void add_heat_meters(std::vector<Instrument>& all) {
   using T = const Truth&;
   add_heat_meter(all, {.prefix = "ch1_cold",
                        .machine = chiller,
-                       .in_T = Role::cold_in_temperature,
-                       .out_T = Role::cold_out_temperature,
+                       .in_role = Role::cold_in_temperature,
+                       .out_role = Role::cold_out_temperature,
                        .flow = Role::cold_flow,
                        .address = 0,
                        .number = 0,
@@ -140,8 +140,8 @@ void add_heat_meters(std::vector<Instrument>& all) {
   add_heat_meter(
       all, {.prefix = "ch1_hot",
             .machine = chiller,
-            .in_T = Role::hot_in_temperature,
-            .out_T = Role::hot_out_temperature,
+            .in_role = Role::hot_in_temperature,
+            .out_role = Role::hot_out_temperature,
             .flow = Role::hot_flow,
             .address = 10,
             .number = 1,
@@ -151,8 +151,8 @@ void add_heat_meters(std::vector<Instrument>& all) {
                 [](T t) { return volume_flow_m3s(ch(t).inlet.hot_kgs, ch(t).inlet.hot_in_T_K); }});
   add_heat_meter(all, {.prefix = "hp1_cold",
                        .machine = heat_pump,
-                       .in_T = Role::cold_in_temperature,
-                       .out_T = Role::cold_out_temperature,
+                       .in_role = Role::cold_in_temperature,
+                       .out_role = Role::cold_out_temperature,
                        .flow = Role::cold_flow,
                        .address = 20,
                        .number = 2,
@@ -165,8 +165,8 @@ void add_heat_meters(std::vector<Instrument>& all) {
   add_heat_meter(
       all, {.prefix = "hp1_hot",
             .machine = heat_pump,
-            .in_T = Role::hot_in_temperature,
-            .out_T = Role::hot_out_temperature,
+            .in_role = Role::hot_in_temperature,
+            .out_role = Role::hot_out_temperature,
             .flow = Role::hot_flow,
             .address = 30,
             .number = 3,

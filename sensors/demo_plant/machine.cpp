@@ -220,8 +220,8 @@ MachineTruth Machine::run(const MachineInlet& inlet, const MachineHealth& health
   const CycleTrial solved =
       balanced(f, {
                       .before = {state_.evaporating_T_K, state_.condensing_T_K},
-                      .evaporator_WK = machine.evaporator.heat_capacity_JK / order.dt.count(),
-                      .condenser_WK = machine.condenser.heat_capacity_JK / order.dt.count()
+                      .evaporator_WK = machine.evaporator.heat_capacity_SI / order.dt.count(),
+                      .condenser_WK = machine.condenser.heat_capacity_SI / order.dt.count()
   });
   MachineTruth truth = full(f, solved);
   truth.starting = state_.since_switch < capacity_run_up;

@@ -45,7 +45,13 @@ const PlantCounters& counters(const Truth& truth, bool chiller) {
   return truth.counters[chiller ? 0 : 1];
 }
 
-constexpr double J_per_kWh = 3.6e6;
+double kilowatt_hours(double energy_J) {
+  return from_SI(Unit::kWh, energy_J, plant_altitude_m);
+}
+double kilowatts(double power_W) {
+  return from_SI(Unit::kW, power_W, plant_altitude_m);
+}
+
 constexpr double detector_stage_ppm = 500.0;  // of the invented detector
 
 // Bit 0 ready, 1 running, 2 starting, 3 valve at its end.
@@ -68,8 +74,8 @@ double starts(const Truth& truth) {
 }
 
 template <bool chiller>
-double energy_kWh(const Truth& truth) {
-  return counters(truth, chiller).energy_J / J_per_kWh;
+double energy_meter(const Truth& truth) {
+  return kilowatt_hours(counters(truth, chiller).energy_J);
 }
 
 void add_heat_counter(std::vector<Register>& all, std::uint16_t address,
@@ -83,17 +89,17 @@ void add_heat_counter(std::vector<Register>& all, std::uint16_t address,
 
 void add_heat_counters(std::vector<Register>& all) {
   add_heat_counter(
-      all, 0, [](T t) { return t.counters[0].cold_heat_J / J_per_kWh; },
-      [](T t) { return t.machines[0].cold_heat_W / 1e3; });
+      all, 0, [](T t) { return kilowatt_hours(t.counters[0].cold_heat_J); },
+      [](T t) { return kilowatts(t.machines[0].cold_heat_W); });
   add_heat_counter(
-      all, 10, [](T t) { return t.counters[0].hot_heat_J / J_per_kWh; },
-      [](T t) { return t.machines[0].hot_heat_W / 1e3; });
+      all, 10, [](T t) { return kilowatt_hours(t.counters[0].hot_heat_J); },
+      [](T t) { return kilowatts(t.machines[0].hot_heat_W); });
   add_heat_counter(
-      all, 20, [](T t) { return t.counters[1].cold_heat_J / J_per_kWh; },
-      [](T t) { return t.machines[1].cold_heat_W / 1e3; });
+      all, 20, [](T t) { return kilowatt_hours(t.counters[1].cold_heat_J); },
+      [](T t) { return kilowatts(t.machines[1].cold_heat_W); });
   add_heat_counter(
-      all, 30, [](T t) { return t.counters[1].hot_heat_J / J_per_kWh; },
-      [](T t) { return t.machines[1].hot_heat_W / 1e3; });
+      all, 30, [](T t) { return kilowatt_hours(t.counters[1].hot_heat_J); },
+      [](T t) { return kilowatts(t.machines[1].hot_heat_W); });
 }
 
 std::vector<Register> unmapped_registers() {
@@ -116,11 +122,13 @@ std::vector<Register> unmapped_registers() {
   all.push_back(shows(holding(112), RawType::u16, 1.0, status_word<false>));
   all.push_back(low_word_first(shows(holding(114), RawType::f32, 1.0, running_hours<false>)));
   all.push_back(low_word_first(shows(holding(116), RawType::u32, 1.0, starts<false>)));
-  all.push_back(shows({"chiller-power", Table::holding, 2}, RawType::u32, 0.1, energy_kWh<true>));
+  all.push_back(shows({"chiller-power", Table::holding, 2}, RawType::u32, 0.1, energy_meter<true>));
   all.push_back(
-      shows({"heatpump-power", Table::holding, 42}, RawType::u32, 1.0, energy_kWh<false>));
+      shows({"heatpump-power", Table::holding, 42}, RawType::u32, 1.0, energy_meter<false>));
   all.push_back(shows({"gas-detector", Table::input, 1}, RawType::u16, 1.0, [](T t) {
-    return t.site.refrigerant_in_air * 1e6 >= detector_stage_ppm ? 1.0 : 0.0;
+    return from_SI(Unit::ppm, t.site.refrigerant_in_air, plant_altitude_m) >= detector_stage_ppm
+               ? 1.0
+               : 0.0;
   }));
   add_heat_counters(all);
   return all;

@@ -31,7 +31,7 @@ enum Stream : std::uint64_t {
   hot_flow
 };
 
-double from_degC(double value) {
+double celsius(double value) {
   return to_SI(Unit::degC, value, 0.0);
 }
 
@@ -100,7 +100,7 @@ constexpr double most_cooling = 0.66;  // effectiveness of the dry cooler with a
 
 double cooler_share(double warm_T_K, double air_T_K) {
   // The cooler's control follows the weather, but never below what the machines may be given.
-  const double wanted_T_K = std::max(from_degC(17.0), air_T_K + 7.0);
+  const double wanted_T_K = std::max(celsius(17.0), air_T_K + 7.0);
   const double reach_K = warm_T_K - air_T_K;
   return reach_K <= 0.1 ? 0.0 : std::clamp((warm_T_K - wanted_T_K) / reach_K, 0.0, most_cooling);
 }
@@ -121,7 +121,7 @@ double air_T_K(std::uint64_t seed, Instant time) {
                 (static_cast<double>(at.day) + at.hour / 24.0 - coldest_day) / year_days);
   const double swing_K = 3.8 + 1.4 * season;  // clear summer days swing more
   const double of_day = -std::cos(2.0 * std::numbers::pi * (at.hour - 3.5) / 24.0);
-  return from_degC(10.5) + 6.5 * season + swing_K * of_day +
+  return celsius(10.5) + 6.5 * season + swing_K * of_day +
          2.8 * wander({seed, weather_of_days}, time, hours{54}) +
          0.5 * wander({seed, weather_of_hours}, time, hours{3});
 }
@@ -140,7 +140,7 @@ double chilled_load_W(std::uint64_t seed, Instant time, double air_T_K) {
     share = at.sunday ? planned(chilled_sunday, at.hour) : planned(chilled_saturday, at.hour);
   }
   const double by_day = 1.0 + 0.06 * normal({seed, chilled_day}, at.day);
-  const double by_air = 1.0 + 0.010 * (air_T_K - from_degC(10.5));
+  const double by_air = 1.0 + 0.010 * (air_T_K - celsius(10.5));
   const double by_hour = 1.0 + 0.03 * wander({seed, chilled_hours}, time, minutes{95});
   return std::max(0.0, largest_W * share * by_day * by_air * by_hour);
 }
@@ -151,7 +151,7 @@ double hot_load_W(std::uint64_t seed, Instant time, double air_T_K) {
   const double share =
       at.saturday || at.sunday ? planned(hot_weekend, at.hour) : planned(hot_weekday, at.hour);
   const double by_day = 1.0 + 0.05 * normal({seed, hot_day}, at.day);
-  const double by_air = 1.0 - 0.006 * (air_T_K - from_degC(10.5));
+  const double by_air = 1.0 - 0.006 * (air_T_K - celsius(10.5));
   const double by_hour = 1.0 + 0.03 * wander({seed, hot_hours}, time, minutes{110});
   return std::max(0.0, largest_W * share * by_day * by_air * by_hour);
 }
@@ -173,13 +173,13 @@ MachineInlet Site::heat_pump_inlet(Instant time, double flow_loss) const {
 }
 
 double Site::heat_pump_limit() const {
-  return std::clamp((truth_.warm_tank_T_K - from_degC(10.0)) / 4.0, 0.0, 1.0);
+  return std::clamp((truth_.warm_tank_T_K - celsius(10.0)) / 4.0, 0.0, 1.0);
 }
 
 void Site::set_weather(Instant time) {
   truth_.air_T_K = lostwork::air_T_K(seed_, time);
   truth_.air_humidity = lostwork::air_humidity(seed_, time);
-  truth_.room_T_K = from_degC(20.0) + 0.35 * (truth_.air_T_K - from_degC(12.0));
+  truth_.room_T_K = celsius(20.0) + 0.35 * (truth_.air_T_K - celsius(12.0));
 }
 
 void Site::advance(Instant time, Seconds dt, const MachineTruth& chiller,
@@ -192,7 +192,7 @@ void Site::advance(Instant time, Seconds dt, const MachineTruth& chiller,
 void Site::advance_chilled(Instant time, Seconds dt, const MachineTruth& chiller) {
   const double flow_WK = chiller.inlet.cold_kgs * mean_cp_JkgK;
   // A consumer's exchanger gives less to water that comes too warm.
-  const double too_warm_K = chiller.cold_out_T_K - from_degC(7.0);
+  const double too_warm_K = chiller.cold_out_T_K - celsius(7.0);
   truth_.chilled_load_W = lostwork::chilled_load_W(seed_, time, truth_.air_T_K) *
                           std::clamp(1.0 - 0.08 * too_warm_K, 0.2, 1.0);
   truth_.chilled_gain_W = chilled_pipe_WK * (truth_.room_T_K - truth_.chilled_tank_T_K);
@@ -221,7 +221,7 @@ void Site::advance_condenser_loop(Seconds dt, const MachineTruth& chiller,
 void Site::advance_hot(Instant time, Seconds dt, const MachineTruth& heat_pump) {
   const double flow_WK = heat_pump.inlet.hot_kgs * mean_cp_JkgK;
   // A consumer takes less from water that comes too cold.
-  const double too_cold_K = from_degC(64.0) - heat_pump.hot_out_T_K;
+  const double too_cold_K = celsius(64.0) - heat_pump.hot_out_T_K;
   truth_.hot_load_W = lostwork::hot_load_W(seed_, time, truth_.air_T_K) *
                       std::clamp(1.0 - 0.06 * too_cold_K, 0.0, 1.0);
   truth_.hot_pipe_loss_W = hot_pipe_WK * (truth_.hot_tank_T_K - truth_.room_T_K);

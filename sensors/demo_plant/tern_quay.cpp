@@ -5,7 +5,7 @@
 namespace lostwork {
 namespace {
 
-double from_degC(double value) {
+double celsius(double value) {
   return to_SI(Unit::degC, value, 0.0);
 }
 
@@ -35,7 +35,7 @@ double size_for(const Machine& machine, const RatingPoint& rating, double extra,
 const MachineParameters& tern_quay_chiller() {
   static const MachineParameters parameters{
       .product = ProductSide::cold,
-      .product_T_K = from_degC(6.0),
+      .product_T_K = celsius(6.0),
       .start_difference_K = 3.5,
       .stop_difference_K = 1.2,
       .rated_power_W = 75e3,
@@ -51,14 +51,14 @@ const MachineParameters& tern_quay_chiller() {
                      .motor = {.constant = 0.028, .linear = 0.012, .quadratic = 0.030},
                      .drive = {.constant = 0.014, .linear = 0.014, .quadratic = 0.006},
                      .casing_conductance_WK = 22.0},
-      .evaporator = {.water_resistance_KW = 9.0e-6,
-                     .refrigerant_resistance_KW = 9.5e-6,
+      .evaporator = {.water_resistance_SI = 9.0e-6,
+                     .refrigerant_resistance_SI = 9.5e-6,
                      .rated_kgs = 13.6,
-                     .heat_capacity_JK = 420e3  },
-      .condenser = {.water_resistance_KW = 6.5e-6,
-                     .refrigerant_resistance_KW = 6.0e-6,
+                     .heat_capacity_SI = 420e3  },
+      .condenser = {.water_resistance_SI = 6.5e-6,
+                     .refrigerant_resistance_SI = 6.0e-6,
                      .rated_kgs = 16.8,
-                     .heat_capacity_JK = 380e3  },
+                     .heat_capacity_SI = 380e3  },
       .superheat_set_K = 5.0,
       .subcooler_area = 0.12,
       .subcooler_transfer = 0.24,
@@ -74,7 +74,7 @@ const MachineParameters& tern_quay_chiller() {
 const MachineParameters& tern_quay_heat_pump() {
   static const MachineParameters parameters{
       .product = ProductSide::hot,
-      .product_T_K = from_degC(65.0),
+      .product_T_K = celsius(65.0),
       .start_difference_K = 5.0,
       .stop_difference_K = 1.2,
       .rated_power_W = 48e3,
@@ -90,14 +90,14 @@ const MachineParameters& tern_quay_heat_pump() {
                      .motor = {.constant = 0.013, .linear = 0.012, .quadratic = 0.030},
                      .drive = {.constant = 0.007, .linear = 0.013, .quadratic = 0.006},
                      .casing_conductance_WK = 16.0},
-      .evaporator = {.water_resistance_KW = 2.2e-5,
-                     .refrigerant_resistance_KW = 2.5e-5,
+      .evaporator = {.water_resistance_SI = 2.2e-5,
+                     .refrigerant_resistance_SI = 2.5e-5,
                      .rated_kgs = 6.0,
-                     .heat_capacity_JK = 160e3  },
-      .condenser = {.water_resistance_KW = 1.7e-5,
-                     .refrigerant_resistance_KW = 1.7e-5,
+                     .heat_capacity_SI = 160e3  },
+      .condenser = {.water_resistance_SI = 1.7e-5,
+                     .refrigerant_resistance_SI = 1.7e-5,
                      .rated_kgs = 3.8,
-                     .heat_capacity_JK = 150e3  },
+                     .heat_capacity_SI = 150e3  },
       .superheat_set_K = 6.0,
       .subcooler_area = 0.12,
       .subcooler_transfer = 0.30,
@@ -112,11 +112,11 @@ const MachineParameters& tern_quay_heat_pump() {
 
 const RatingPoint& chiller_rating() {
   static const RatingPoint rating{
-      .inlet = {.cold_in_T_K = from_degC(11.0),
+      .inlet = {.cold_in_T_K = celsius(11.0),
                 .cold_kgs = 13.6,
-                .hot_in_T_K = from_degC(28.0),
+                .hot_in_T_K = celsius(28.0),
                 .hot_kgs = 16.8,
-                .room_T_K = from_degC(20.0)},
+                .room_T_K = celsius(20.0)},
       .product_heat_W = 280e3
   };
   return rating;
@@ -124,11 +124,11 @@ const RatingPoint& chiller_rating() {
 
 const RatingPoint& heat_pump_rating() {
   static const RatingPoint rating{
-      .inlet = {.cold_in_T_K = from_degC(25.0),
+      .inlet = {.cold_in_T_K = celsius(25.0),
                 .cold_kgs = 6.0,
-                .hot_in_T_K = from_degC(56.0),
+                .hot_in_T_K = celsius(56.0),
                 .hot_kgs = 3.8,
-                .room_T_K = from_degC(20.0)},
+                .room_T_K = celsius(20.0)},
       .product_heat_W = 140e3
   };
   return rating;

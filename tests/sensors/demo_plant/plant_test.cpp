@@ -96,7 +96,7 @@ TEST(Plant, ShellsStoreWhatTheirTemperaturesSay) {
   Plant p = plant();
   run(p, hours{8});
   const auto capacity = [](const MachineParameters& m) {
-    return std::array{m.evaporator.heat_capacity_JK, m.condenser.heat_capacity_JK};
+    return std::array{m.evaporator.heat_capacity_SI, m.condenser.heat_capacity_SI};
   };
   const std::array capacities{capacity(tern_quay_chiller()), capacity(tern_quay_heat_pump())};
   for (int i = 0; i < 60; ++i) {

@@ -88,16 +88,16 @@ TEST(RegisterImage, CountersGrow) {
   Plant plant = at_work();
   RegisterImage image = register_image(plant);
   const BlockRequest energy{.unit = 3, .table = Table::input, .address = 4, .count = 2};
-  const auto kWh = [&] {
+  const auto counted = [&] {
     const auto words = answer(image, energy).words;
     return (std::uint32_t{words[1]} << 16U) | words[0];  // low word first
   };
-  const std::uint32_t before = kWh();
+  const std::uint32_t before = counted();
   plant.step(hours{2});
   refresh(image, plant);
-  const double given_kWh = plant.truth().counters[0].cold_heat_J / 3.6e6;
-  EXPECT_GT(kWh(), before);
-  EXPECT_NEAR(kWh(), given_kWh, 0.5);
+  const double given = plant.truth().counters[0].cold_heat_J / 3.6e6;
+  EXPECT_GT(counted(), before);
+  EXPECT_NEAR(counted(), given, 0.5);
 }
 
 TEST(RegisterImage, RefusesRegistersThatADeviceDoesNotHave) {
