@@ -17,7 +17,8 @@ constexpr std::size_t most_inputs = 14;
 
 // Days in a row that the diagnosis has to say "sensor" before it is active [E].
 constexpr std::uint32_t sensor_days = 3;
-// Days that a drift stays a watch while a sensor is as likely as the machine [E].
+// Days that a drift stays a watch while a sensor is as likely as the machine, or nothing places it
+// [E].
 constexpr std::uint32_t doubt_days = 14;
 // Days in a row back at the baseline that end a finding [E].
 constexpr std::uint32_t quiet_days = 5;
@@ -41,7 +42,7 @@ struct Judgement {
   Diagnosis diagnosis;
   bool power_alarm = false;
   bool feature_alarm = false;
-  bool features_there = false;
+  bool machine_seen = false;  // on its refrigerant side
   bool sensor_leads = false;
   bool sensor_called = false;
   bool sensor_possible = false;
@@ -79,13 +80,15 @@ bool any_feature_alarm(const HealthOptions& options, const HealthState& state) {
   return false;
 }
 
-bool any_feature(const Baseline& baseline) {
-  for (std::size_t i = 0; i < feature_count; ++i) {
-    if (compared(static_cast<Feature>(i)) && !baseline.fits.at(i).x.empty()) {
-      return true;
-    }
-  }
-  return false;
+// Where a fault of the machine shows itself besides the power (methods.md 6.3). Flows and balances
+// are not among them: they tell of pumps and of sensors.
+constexpr std::array machine_features{Feature::hot_approach, Feature::cold_approach,
+                                      Feature::superheat, Feature::subcooling_share,
+                                      Feature::efficiency};
+
+bool sees_the_machine(const Baseline& baseline) {
+  return std::any_of(machine_features.begin(), machine_features.end(),
+                     [&](Feature feature) { return !baseline[feature].x.empty(); });
 }
 
 // A sensor is called only when it is far likelier than every fault of the machine: to take a
@@ -135,7 +138,7 @@ Judgement judge(const HealthModel& model, const HealthState& state, std::int64_t
   Judgement j;
   j.power_alarm = alarmed(state.charts[0].up, design(model.options, *state.baseline));
   j.feature_alarm = any_feature_alarm(model.options, state);
-  j.features_there = any_feature(*state.baseline);
+  j.machine_seen = sees_the_machine(*state.baseline);
   j.days = last_days(state, from_day);
   j.shift = shift_of(*state.baseline, j.days);
   const Inputs inputs = mean_of(state.recent_inputs);
@@ -319,14 +322,15 @@ std::optional<Finding> follow_sensor(const HealthModel& model, HealthState& stat
   return finding;
 }
 
-// Confirmed by a feature, and not by one that a sensor explains as well; without features, or when
-// the doubt lasts, by the power alone.
+// Confirmed by a feature, and not by one that a sensor explains as well; by the power alone where
+// the refrigerant side is not seen, and where the doubt lasts: a drift that none of the sensors
+// there are can place is one nevertheless.
 bool confirmed(const Judgement& j, const FindingProgress& progress) {
-  if (!j.power_alarm || !(j.feature_alarm || !j.features_there) || j.sensor_leads) {
+  if (!j.power_alarm || j.sensor_leads) {
     return false;
   }
-  const bool doubt = j.features_there && (j.sensor_possible || !j.diagnosis.explained);
-  return !doubt || progress.days >= doubt_days;
+  const bool unplaced = j.machine_seen && (!j.feature_alarm || !j.diagnosis.explained);
+  return !(unplaced || j.sensor_possible) || progress.days >= doubt_days;
 }
 
 bool machine_is_clear(const Diagnosis& diagnosis) {

@@ -16,12 +16,29 @@ struct Shape {
 };
 
 constexpr double endless = 1e4;
+// Lengths a fifth apart: a ramp that ends between two of them is taken for neither's onset by more
+// than the interval owns.
 constexpr auto shapes = std::to_array<Shape>({
     {    0.0,  1.0},
+    {    2.0,  1.0},
+    {    3.0,  1.0},
     {    4.0,  1.0},
+    {    5.0,  1.0},
+    {    6.5,  1.0},
+    {    8.0,  1.0},
     {   10.0,  1.0},
-    {   25.0,  1.0},
-    {   60.0,  1.0},
+    {   12.0,  1.0},
+    {   14.0,  1.0},
+    {   17.0,  1.0},
+    {   20.0,  1.0},
+    {   24.0,  1.0},
+    {   28.0,  1.0},
+    {   33.0,  1.0},
+    {   38.0,  1.0},
+    {   45.0,  1.0},
+    {   55.0,  1.0},
+    {   70.0,  1.0},
+    {   90.0,  1.0},
     {  120.0,  1.0},
     {endless,  0.5},
     {endless, 0.75},
