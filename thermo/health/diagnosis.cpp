@@ -46,12 +46,12 @@ struct Best {
 };
 
 // Scans amounts a tenth apart in ratio, then narrows about the best.
-Best best_amount(const std::vector<Seen>& seen, const Trace& trace, double sign) {
+Best best_amount(const std::vector<Seen>& seen, const Trace& trace) {
   Best best{.amount = 0.0, .log_likelihood = -std::numeric_limits<double>::infinity()};
   for (double size = 0.01; size < 200.0; size *= 1.1) {
-    const double l = log_likelihood(seen, trace, sign * size);
+    const double l = log_likelihood(seen, trace, size);
     if (l > best.log_likelihood) {
-      best = {.amount = sign * size, .log_likelihood = l};
+      best = {.amount = size, .log_likelihood = l};
     }
   }
   double ratio = 1.05;
@@ -100,17 +100,13 @@ std::optional<Weighed> weigh(const std::vector<Seen>& seen, const Trace& trace) 
   if (!visible(seen, trace)) {
     return std::nullopt;
   }
-  Best best = best_amount(seen, trace, 1.0);
-  if (trace.either_sign) {
-    const Best other = best_amount(seen, trace, -1.0);
-    best = other.log_likelihood > best.log_likelihood ? other : best;
-  }
+  const Best best = best_amount(seen, trace);
   return Weighed{
       .cause = {.cause = trace.cause,
                 .role = trace.role,
                 .probability = 0.0,
                 .amount_SI = {.value = best.amount * trace.unit_SI,
-                .u = amount_u(seen, trace, best.amount) * trace.unit_SI}},
+                .u = amount_u(seen, trace, best.amount) * std::abs(trace.unit_SI)}},
       .log_likelihood = best.log_likelihood
   };
 }
@@ -125,6 +121,42 @@ void keep_better(std::vector<Weighed>& all, const Weighed& weighed) {
   } else if (weighed.log_likelihood > same->log_likelihood) {
     *same = weighed;
   }
+}
+
+struct SensorBias {
+  Input input;
+  double bias_SI;
+};
+
+std::vector<SensorBias> first_biases(const Inputs& inputs) {
+  std::vector<SensorBias> out;
+  for (std::size_t i = 0; i < input_count; ++i) {
+    const auto input = static_cast<Input>(i);
+    if (inputs[input]) {
+      const double bias_SI = first_bias_SI(input, *inputs[input]);
+      out.push_back({.input = input, .bias_SI = bias_SI});
+      out.push_back({.input = input, .bias_SI = -bias_SI});
+    }
+  }
+  return out;
+}
+
+// A bias of the sensor with that sign: searched along the trace of a first bias, then along that of
+// the bias found, for heats and approaches do not follow a large one in proportion.
+std::optional<Weighed> weigh_sensor(const std::vector<Seen>& seen, const MachineModel& machine,
+                                    const Baseline& baseline, const Inputs& inputs,
+                                    const SensorBias& first) {
+  std::optional<Weighed> weighed;
+  double bias_SI = first.bias_SI;
+  for (int round = 0; round < 3; ++round) {
+    const auto trace = sensor_trace(machine, baseline, inputs, first.input, bias_SI);
+    weighed = trace ? weigh(seen, *trace) : std::nullopt;
+    if (!weighed) {
+      break;
+    }
+    bias_SI = weighed->cause.amount_SI.value;
+  }
+  return weighed;
 }
 
 double log_likelihood_of_nothing(const std::vector<Seen>& seen) {
@@ -144,12 +176,14 @@ bool compared(Feature feature) {
 Diagnosis diagnose(const MachineModel& machine, const Baseline& baseline,
                    const DiagnosisInput& input, double margin) {
   const std::vector<Seen> seen = seen_of(input.shift);
-  std::vector<Trace> traces = machine_traces();
-  const std::vector<Trace> sensors = sensor_traces(machine, baseline, input.inputs);
-  traces.insert(traces.end(), sensors.begin(), sensors.end());
   std::vector<Weighed> all;
-  for (const Trace& trace : traces) {
+  for (const Trace& trace : machine_traces()) {
     if (const auto weighed = weigh(seen, trace)) {
+      keep_better(all, *weighed);
+    }
+  }
+  for (const SensorBias& first : first_biases(input.inputs)) {
+    if (const auto weighed = weigh_sensor(seen, machine, baseline, input.inputs, first)) {
       keep_better(all, *weighed);
     }
   }

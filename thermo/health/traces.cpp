@@ -11,7 +11,7 @@ using enum Feature;
 
 // Share of its own largest effect by which a cause may move any feature, in natural units [E].
 constexpr double machine_tolerance = 0.07;
-constexpr double sensor_tolerance = 0.05;
+constexpr double sensor_tolerance = 0.03;
 
 struct Effect {
   Feature feature;
@@ -27,18 +27,6 @@ Trace machine_trace(Cause cause, double unit_SI, std::initializer_list<Effect> e
     trace.tolerance.at(static_cast<std::size_t>(effect.feature)) = effect.tolerance;
   }
   return trace;
-}
-
-// By how much an input is moved to see what follows: plain to see, small enough to be linear.
-double step_SI(Input input, double value) {
-  switch (input) {
-    case Input::power:
-    case Input::cold_flow:
-    case Input::hot_flow: return 0.03 * value;
-    case Input::suction_pressure:
-    case Input::discharge_pressure: return 0.02 * value;
-    default: return 0.5;  // K
-  }
 }
 
 std::array<std::optional<double>, feature_count> residuals(const MachineModel& machine,
@@ -118,34 +106,33 @@ std::vector<Trace> machine_traces() {
   };
 }
 
-std::vector<Trace> sensor_traces(const MachineModel& machine, const Baseline& baseline,
-                                 const Inputs& inputs) {
-  std::vector<Trace> traces;
-  const auto before = residuals(machine, baseline, inputs);
-  for (std::size_t i = 0; i < input_count; ++i) {
-    const auto input = static_cast<Input>(i);
-    if (!inputs[input]) {
-      continue;
-    }
-    const double step = step_SI(input, *inputs[input]);
-    Inputs moved = inputs;
-    moved[input] = *inputs[input] + step;
-    const auto after = residuals(machine, baseline, moved);
-    Trace trace{
-        .cause = Cause::sensor, .role = role_of(input), .either_sign = true, .unit_SI = step};
-    double largest = 0.0;
-    for (std::size_t f = 0; f < feature_count; ++f) {
-      if (before.at(f) && after.at(f)) {
-        trace.mean.at(f) = (*after.at(f) - *before.at(f)) / info(static_cast<Feature>(f)).natural;
-        largest = std::max(largest, std::abs(trace.mean.at(f)));
-      }
-    }
-    trace.tolerance.fill(sensor_tolerance * largest);
-    if (largest > 0.0) {
-      traces.push_back(trace);
+double first_bias_SI(Input input, double value_SI) {
+  switch (dimension(role_of(input))) {
+    case Dimension::temperature: return 0.5;
+    case Dimension::pressure: return 0.02 * value_SI;
+    default: return 0.03 * value_SI;
+  }
+}
+
+std::optional<Trace> sensor_trace(const MachineModel& machine, const Baseline& baseline,
+                                  const Inputs& inputs, Input input, double bias_SI) {
+  if (!inputs[input]) {
+    return std::nullopt;
+  }
+  Inputs without = inputs;
+  without[input] = *inputs[input] - bias_SI;
+  const auto biased = residuals(machine, baseline, inputs);
+  const auto right = residuals(machine, baseline, without);
+  Trace trace{.cause = Cause::sensor, .role = role_of(input), .unit_SI = bias_SI};
+  double largest = 0.0;
+  for (std::size_t f = 0; f < feature_count; ++f) {
+    if (biased.at(f) && right.at(f)) {
+      trace.mean.at(f) = (*biased.at(f) - *right.at(f)) / info(static_cast<Feature>(f)).natural;
+      largest = std::max(largest, std::abs(trace.mean.at(f)));
     }
   }
-  return traces;
+  trace.tolerance.fill(sensor_tolerance * largest);
+  return largest > 0.0 ? std::optional{trace} : std::nullopt;
 }
 
 }  // namespace lostwork

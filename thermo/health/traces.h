@@ -17,8 +17,7 @@ namespace lostwork {
 struct Trace {
   Cause cause{};
   std::optional<Role> role;
-  bool either_sign = false;  // a sensor may read too high or too low; a fault has one sign
-  double unit_SI = 1.0;      // amount 1 is so much: K, a ratio, or the sensor's unit
+  double unit_SI = 1.0;  // amount 1 is so much: K, a ratio, or the sensor's unit, signed
   std::array<double, feature_count> mean{};
   std::array<double, feature_count> tolerance{};  // standard deviation between machines
 };
@@ -26,8 +25,14 @@ struct Trace {
 // Directions after methods.md 6.1 to 6.3; the tolerances are engineering judgement.
 [[nodiscard]] std::vector<Trace> machine_traces();
 
-// One for each input that is there and moves something, at the conditions given.
-[[nodiscard]] std::vector<Trace> sensor_traces(const MachineModel& machine,
-                                               const Baseline& baseline, const Inputs& inputs);
+// A bias that is plain to see and small enough to begin a search with; K, or in the input's unit.
+[[nodiscard]] double first_bias_SI(Input input, double value_SI);
+
+// What a bias of one sensor leaves: the residuals as the inputs are now, less those without it.
+// Exact for that bias, so that a search ends with the trace of the bias that it found. None where
+// the input is missing or moves nothing.
+[[nodiscard]] std::optional<Trace> sensor_trace(const MachineModel& machine,
+                                                const Baseline& baseline, const Inputs& inputs,
+                                                Input input, double bias_SI);
 
 }  // namespace lostwork

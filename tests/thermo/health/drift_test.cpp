@@ -86,6 +86,43 @@ INSTANTIATE_TEST_SUITE_P(
              Cause::compressor_worn, Component::compressor}),
     [](const auto& given) { return given.param.name; });
 
+struct Bias {
+  std::string name;
+  Input input;
+  double bias;  // K, or a share of the reading
+};
+
+std::ostream& operator<<(std::ostream& out, const Bias& b) {
+  return out << b.name;
+}
+
+class BiasOfASensor : public ::testing::TestWithParam<Bias> {};
+
+TEST_P(BiasOfASensor, IsFoundAndTheSensorNamed) {
+  const auto [name, input, bias] = GetParam();
+  SyntheticOptions options = faulty([&](double day) {
+    Ills ills;
+    ills.bias.at(static_cast<std::size_t>(input)) = bias * grown(day);
+    return ills;
+  });
+  options.days += 16.0;
+  const Played all = played(synthetic_history(options));
+  ASSERT_TRUE(all.confirmed(FindingKind::sensor_suspect));
+  EXPECT_EQ(all.last(FindingKind::sensor_suspect)->suspect_sensors.at(0), role_of(input));
+  EXPECT_FALSE(all.confirmed(FindingKind::efficiency_drift));
+}
+
+INSTANTIATE_TEST_SUITE_P(Sensors, BiasOfASensor,
+                         ::testing::Values(Bias{"ColdOutTooHigh", Input::cold_out, 0.5},
+                                           Bias{"ColdInTooLow", Input::cold_in, -0.5},
+                                           Bias{"HotOutTooLow", Input::hot_out, -0.6},
+                                           Bias{"ColdFlowTooHigh", Input::cold_flow, 0.06},
+                                           Bias{"PowerTooHigh", Input::power, 0.05},
+                                           Bias{"DischargePressureTooHigh",
+                                                Input::discharge_pressure, 0.03},
+                                           Bias{"LiquidTooCold", Input::liquid_temperature, -1.5}),
+                         [](const auto& given) { return given.param.name; });
+
 SyntheticOptions without_refrigerant_side() {
   SyntheticOptions options =
       faulty([](double day) { return Ills{.wear = day < fault_day ? 0.0 : 0.06}; });
