@@ -149,6 +149,7 @@ class Round {
       slot = book_.slots.insert(book_.slots.end(), std::move(fresh));
     }
     if (active && is_active(slot->alarm.state)) {
+      slot->alarm.since = finding.onset.best;
       slot->alarm.text = finding_text(model_.name, finding);
       slot->alarm.evidence = finding_figures(finding);
     } else if (active) {

@@ -163,12 +163,16 @@ std::string cause_text(const Finding& finding) {
   return said({" Perhaps ", first, ", or ", text(finding.causes[1].cause), "."});
 }
 
-std::string suspects_text(const Finding& finding) {
+std::string suspects_text(const Finding& finding, std::string_view before,
+                          std::string_view between) {
+  if (finding.suspect_sensors.empty()) {
+    return " Which one cannot be told.";
+  }
   std::string out;
   for (const Role role : finding.suspect_sensors) {
-    out += said({out.empty() ? "" : ", then ", name(role)});
+    out += said({out.empty() ? before : between, name(role)});
   }
-  return out;
+  return out + '.';
 }
 
 std::string since_text(const OnsetInterval& onset) {
@@ -245,23 +249,25 @@ std::string finding_text(std::string_view machine, const Finding& finding) {
                  since_text(finding.onset), ".", cost_text(finding), place_text(finding),
                  cause_text(finding)});
   }
-  const std::string suspects = suspects_text(finding);
-  return said({machine,
-               finding.kind == FindingKind::law_broken
-                   ? ": the readings break the first or the second law, so one of them is wrong, "
-                     "since "
-                   : ": a sensor no longer fits the others, since ",
-               since_text(finding.onset), ".",
-               suspects.empty() ? " Which one cannot be told" : std::string_view{" Most likely "},
-               suspects, ". Figures that use it are in doubt until it is checked."});
+  if (finding.kind == FindingKind::law_broken) {
+    return said({machine,
+                 ": the readings cannot all be true, for together they break the first or ",
+                 "the second law of thermodynamics, since ", since_text(finding.onset), ".",
+                 suspects_text(finding, " One of these is wrong: ", ", "),
+                 " Figures that use it are in doubt until it is checked."});
+  }
+  return said({machine, ": a sensor no longer fits the others, since ", since_text(finding.onset),
+               ".", suspects_text(finding, " Most likely ", ", then "),
+               " Figures that use it are in doubt until it is checked."});
 }
 
 std::string finding_over_text(std::string_view machine, const Finding& finding) {
-  return said({machine,
-               finding.kind == FindingKind::efficiency_drift
-                   ? ": the power is again what it was under the same conditions"
-                   : ": the readings fit each other again",
-               "; it was not from ", date_text(finding.onset.best), "."});
+  const std::string since = date_text(finding.onset.best);
+  if (finding.kind == FindingKind::efficiency_drift) {
+    return said({machine, " is no longer found to need more power under the same conditions; it ",
+                 "was since ", since, "."});
+  }
+  return said({machine, ": the readings fit each other again; they did not since ", since, "."});
 }
 
 std::vector<Figure> finding_figures(const Finding& finding) {

@@ -20,6 +20,14 @@ std::string onset_text(const OnsetInterval& onset, const WallClock& clock) {
   return text + '.';
 }
 
+std::string one_of_text(const Finding& finding, const MachineView& machine) {
+  std::string text;
+  for (const Role role : finding.suspect_sensors) {
+    text += (text.empty() ? " One of these is wrong: '" : "', '") + lostwork::text(role, machine);
+  }
+  return text.empty() ? text : text + "'.";
+}
+
 std::string drift_headline(const Finding& finding, const WallClock& clock) {
   const bool less = finding.size.value < 0.0;
   const Measured size = scaled(finding.size, less ? -percent : percent);
@@ -61,8 +69,9 @@ std::string headline(const Finding& finding, const MachineView& machine, const W
     return drift_headline(finding, clock);
   }
   if (finding.kind == FindingKind::law_broken) {
-    return "The readings as they are break the first or the second law" +
-           onset_text(finding.onset, clock);
+    return "The readings cannot all be true, for together they break the first or the second law "
+           "of thermodynamics" +
+           onset_text(finding.onset, clock) + one_of_text(finding, machine);
   }
   const std::string sensor =
       finding.suspect_sensors.empty()
@@ -82,7 +91,7 @@ std::vector<std::string> consequences(const Finding& finding) {
     }
   } else {
     sentences.emplace_back(
-        "Until it is settled, figures that rest on this sensor cannot be trusted.");
+        "Until it is settled, figures that rest on a wrong sensor cannot be trusted.");
   }
   return sentences;
 }

@@ -61,8 +61,8 @@ std::string sensor_name(const MachineView& machine, Role role) {
 
 std::string suspect_text(const MachineView& machine, const Finding& finding,
                          const WallClock& clock) {
-  if (finding.suspect_sensors.empty()) {
-    return machine.name + ": its sensors contradict each other" + since_text(finding, clock);
+  if (finding.kind == FindingKind::law_broken || finding.suspect_sensors.empty()) {
+    return machine.name + ": its readings cannot all be true" + since_text(finding, clock);
   }
   return machine.name + ": the sensor " + sensor_name(machine, finding.suspect_sensors.front()) +
          " does not fit the others" + since_text(finding, clock);
@@ -170,7 +170,7 @@ Sentence sentence(const MachineView& machine, std::span<const AlarmView> alarms,
     return {.condition = Condition::danger,
             .text = machine.name + " needs attention at once: a safety-relevant alarm is active"};
   }
-  for (const FindingKind kind : {FindingKind::law_broken, FindingKind::sensor_suspect}) {
+  for (const FindingKind kind : {FindingKind::sensor_suspect, FindingKind::law_broken}) {
     if (const Finding* finding = confirmed(machine, kind)) {
       return {.condition = Condition::sensor_suspect,
               .text = suspect_text(machine, *finding, clock)};

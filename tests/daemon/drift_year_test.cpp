@@ -156,6 +156,17 @@ TEST(ADriftingSensor, IsCalledASensorAndNoFaultOfTheMachine) {
   EXPECT_THAT(season.alarms(), Each(Not(of_kind(AlarmKind::drift))));
 }
 
+// One degree a day from the first day: no baseline is needed to see that the heats do not close.
+TEST(ASensorThatIsWrongFromTheStart, IsCaughtByTheLawsBeforeAnythingIsLearned) {
+  Season season{plant_with("sensor_drift:sensor=ch1_hot_out,from=2026-03-02,rate=1.0"),
+                PlantMachine::chiller};
+  season.run_until(season_start + days{7});
+  const auto found = season.confirmed(FindingKind::law_broken);
+  ASSERT_TRUE(found);
+  EXPECT_THAT(found->suspect_sensors, Contains(Role::hot_out_temperature));
+  EXPECT_THAT(season.alarms(), Contains(of_kind(AlarmKind::sensor_suspect)));
+}
+
 TEST(ARestart, InTheMiddleChangesNoLaterResult) {
   Season straight{plant_with(fouling), PlantMachine::chiller};
   Season restarted{plant_with(fouling), PlantMachine::chiller};

@@ -37,6 +37,17 @@ TEST(HeadlineOfASensor, NamesIt) {
               HasSubstr("The sensor 'cold water leaving' does not fit the others"));
 }
 
+TEST(HeadlineOfABrokenLaw, NamesTheSensorsThatCouldBeWrong) {
+  const MachineView machine = chiller();
+  Finding finding = machine.findings.front();
+  finding.kind = FindingKind::law_broken;
+  finding.suspect_sensors = {Role::cold_in_temperature, Role::cold_out_temperature};
+  const std::string line = headline(finding, machine, utc_clock());
+  EXPECT_THAT(line, HasSubstr("The readings cannot all be true"));
+  EXPECT_THAT(line,
+              HasSubstr("One of these is wrong: 'cold water entering', 'cold water leaving'."));
+}
+
 TEST(ConsequencesOfADrift, SayWhereItGoes) {
   EXPECT_THAT(
       consequences(chiller().findings.front()),

@@ -103,7 +103,7 @@ std::vector<Case> cases() {
        "Chiller 1: the sensor 'main meter' does not fit the others, since 18 April"                                                                                                                                               },
       {                "LawBroken",
        [](M& m, A&) { m.findings = {finding_of(FindingKind::law_broken, FindingState::active)}; },
-       Condition::sensor_suspect,         "Chiller 1: its sensors contradict each other, since 18 April"                                                                                                                          },
+       Condition::sensor_suspect,           "Chiller 1: its readings cannot all be true, since 18 April"                                                                                                                          },
       {             "SensorFailed", [](M& m,                   A&) { m.points.at(1).reading.quality = Quality::out_of_range; },
        Condition::sensor_failed,
        "Chiller 1: the sensor 'cold water leaving' gives no good reading"                                                                                                                                                         },

@@ -1,6 +1,7 @@
 #include "thermo/health/health.h"
 
 #include "thermo/health/follow.h"
+#include "thermo/health/laws.h"
 #include "thermo/health/learning.h"
 
 #include <chrono>
@@ -89,6 +90,14 @@ HealthUpdate take_window(const HealthModel& model, HealthState state, const Wind
   }
   close_days_before(model, update, day_number(window.end));
   update.next.last_window_end = window.end;
+  const LawCheck laws = check_laws(window);
+  if (auto finding = follow_laws(model, update.next, window.end, laws)) {
+    update.changed.push_back(std::move(*finding));
+  }
+  const bool learning = !update.next.baseline;
+  if (learning && laws.broken != 0U) {
+    return update;  // what cannot be is not learned from
+  }
   const Inputs inputs = inputs_of(model.machine, window);
   if (const auto sample = sample_of(model.machine, window, inputs)) {
     take_sample(update.next, *sample, inputs);

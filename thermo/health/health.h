@@ -113,6 +113,7 @@ enum class LearningNeed : std::uint8_t {
   inputs = 5,      // power, a heat or a temperature is not measured
   acceptance = 6,  // learned; a person has to accept it
   fit = 7,         // the windows scatter too much about any smooth curve
+  laws = 8,        // the readings break the first or the second law
   count
 };
 [[nodiscard]] std::string_view name(LearningNeed need);

@@ -29,9 +29,16 @@ struct FindingProgress {
   std::uint32_t quiet_days = 0;    // in a row without its sign
 };
 
+// Which laws (laws.h) a steady window could be held to, and which of them it broke; a bit a law.
+struct LawWindow {
+  Instant end{};
+  std::uint32_t tested = 0;
+  std::uint32_t broken = 0;
+};
+
 struct HealthState {
   // Of the layout; an archive of another one is refused with ArchiveDamaged.
-  static constexpr std::uint32_t layout = 1;
+  static constexpr std::uint32_t layout = 2;
 
   std::optional<Instant> last_window_end;
   std::optional<DaySums> today;
@@ -53,6 +60,7 @@ struct HealthState {
   std::array<FeatureCharts, feature_count> charts{};
   std::vector<Finding> findings;          // not over
   std::vector<FindingProgress> progress;  // of the same
+  std::vector<LawWindow> law_windows;     // of the last day or the last dozen
 };
 
 template <class Archive>
@@ -68,6 +76,10 @@ void archive(Archive& a, FindingProgress& p) {
   a(p.days, p.days_as_said, p.quiet_days);
 }
 template <class Archive>
+void archive(Archive& a, LawWindow& w) {
+  a(w.end, w.tested, w.broken);
+}
+template <class Archive>
 void archive(Archive& a, HealthState& s) {
   std::uint32_t layout = HealthState::layout;
   a(layout);
@@ -76,7 +88,7 @@ void archive(Archive& a, HealthState& s) {
   }
   a(s.last_window_end, s.today, s.generation, s.extension, s.samples, s.newcomers, s.learning_days,
     s.baseline, s.accepted, s.unattended, s.days, s.recent_inputs, s.history_from, s.charts,
-    s.findings, s.progress);
+    s.findings, s.progress, s.law_windows);
 }
 
 }  // namespace lostwork

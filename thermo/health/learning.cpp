@@ -1,6 +1,7 @@
 #include "thermo/health/learning.h"
 
 #include "thermo/health/diagnosis.h"
+#include "thermo/health/open_finding.h"
 
 #include <algorithm>
 #include <chrono>
@@ -298,7 +299,8 @@ void extend(const HealthModel& model, HealthState& state) {
 
 std::string_view name(LearningNeed need) {
   static constexpr std::array<std::string_view, static_cast<std::size_t>(LearningNeed::count)>
-      names{"windows", "days", "load_span", "lift_span", "spread", "inputs", "acceptance", "fit"};
+      names{"windows", "days",       "load_span", "lift_span", "spread",
+            "inputs",  "acceptance", "fit",       "laws"};
   return names.at(static_cast<std::size_t>(need));
 }
 
@@ -311,7 +313,8 @@ std::string_view text(LearningNeed need) {
             "needs high load in mild weather, or low load in hot weather",
             "needs power, product heat and stream temperatures",
             "waits for a person to accept what was learned",
-            "the steady hours do not lie on one smooth curve yet"};
+            "the steady hours do not lie on one smooth curve yet",
+            "needs readings that do not break the first or the second law"};
   return texts.at(static_cast<std::size_t>(need));
 }
 
@@ -337,7 +340,9 @@ LearningStatus learning_status(const HealthModel& model, const HealthState& stat
     return status;
   }
   status.missing = missing_counts(model.options, state);
-  if (state.samples.empty() && state.last_window_end) {
+  if (open_of(state, FindingKind::law_broken)) {
+    status.missing.push_back(LearningNeed::laws);
+  } else if (state.samples.empty() && state.last_window_end) {
     status.missing.push_back(LearningNeed::inputs);
   }
   if (!patient_enough(model.options, state)) {
