@@ -43,7 +43,7 @@ std::vector<std::uint16_t> registers(std::span<const std::uint8_t> bytes) {
 std::vector<std::uint16_t> bits(std::span<const std::uint8_t> bytes, std::size_t count) {
   std::vector<std::uint16_t> words(count);
   for (std::size_t i = 0; i < count; ++i) {
-    words[i] = static_cast<std::uint16_t>((bytes[i / 8] >> (i % 8)) & 1U);
+    words[i] = static_cast<std::uint16_t>((unsigned{bytes[i / 8]} >> (i % 8)) & 1U);
   }
   return words;
 }
