@@ -7,6 +7,8 @@
 #include <chrono>
 #include <memory>
 #include <optional>
+#include <ostream>
+#include <string>
 #include <string_view>
 #include <utility>
 #include <vector>
@@ -133,6 +135,47 @@ TEST_F(Fouling, HasAnOnsetIntervalThatHoldsTheTruth) {
 TEST_F(Fouling, IsNotCalledASensor) {
   EXPECT_THAT(season->alarms(), Not(Contains(of_kind(AlarmKind::sensor_suspect))));
 }
+
+struct PlantFaultCase {
+  std::string_view name;
+  std::string_view fault;
+  PlantMachine machine;
+  Cause cause;
+};
+
+std::ostream& operator<<(std::ostream& out, const PlantFaultCase& c) {
+  return out << c.name;
+}
+
+class FaultOfThePlant : public ::testing::TestWithParam<PlantFaultCase> {};
+
+TEST_P(FaultOfThePlant, IsFoundAndItsCauseNamedFirst) {
+  Season season{plant_with(GetParam().fault), GetParam().machine};
+  season.run_until(fault_begins + days{54});
+  const auto found = season.confirmed(FindingKind::efficiency_drift);
+  ASSERT_TRUE(found);
+  EXPECT_GT(*found->confirmed, fault_begins);
+  EXPECT_EQ(season.findings().back().causes.at(0).cause, GetParam().cause)
+      << text(season.findings().back().causes.at(0).cause);
+  EXPECT_THAT(season.alarms(), Not(Contains(of_kind(AlarmKind::sensor_suspect))));
+}
+
+INSTANTIATE_TEST_SUITE_P(
+    Faults, FaultOfThePlant,
+    ::testing::Values(
+        PlantFaultCase{"RefrigerantLost",
+                       "refrigerant_leak:machine=chiller-1,from=2026-05-04,rate=1,limit=30",
+                       PlantMachine::chiller, Cause::refrigerant_low},
+        PlantFaultCase{"CondenserFlowLow",
+                       "low_condenser_flow:machine=chiller-1,from=2026-05-04,loss=35",
+                       PlantMachine::chiller, Cause::hot_flow_low},
+        PlantFaultCase{"CompressorWorn",
+                       "compressor_wear:machine=chiller-1,from=2026-05-04,power=5,days=40",
+                       PlantMachine::chiller, Cause::compressor_worn},
+        PlantFaultCase{"CompressorOfTheHeatPumpWorn",
+                       "compressor_wear:machine=heatpump-1,from=2026-05-04,power=5,days=40",
+                       PlantMachine::heat_pump, Cause::compressor_worn}),
+    [](const auto& given) { return std::string{given.param.name}; });
 
 TEST(HealthyYear, OfTheChillerRaisesNoAlarm) {
   Season year{plant_with(""), PlantMachine::chiller};
