@@ -98,7 +98,7 @@ DeviceOptions device_options(const DeviceEntry& entry, const PlantFile& file, Pr
 ModelStream model_stream(const StreamEntry& entry) {
   ModelStream out;
   if (entry.rho_cp_J_m3K) {
-    out.fluid = ConstantStream{.rho_cp_JmK = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0};
+    out.fluid = ConstantStream{.rho_cp_SI = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0};
   }
   return out;
 }

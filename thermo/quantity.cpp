@@ -6,7 +6,7 @@ namespace {
 using enum QuantityKind;
 
 constexpr double kilo = 1e-3;
-constexpr double zero_degC = -273.15;
+constexpr double kelvin_offset = -273.15;
 
 constexpr std::array<QuantityInfo, quantity_count> table{
     {
@@ -21,9 +21,9 @@ constexpr std::array<QuantityInfo, quantity_count> table{
      {"second_law_efficiency", "1", "eta_II", ratio, 1, 0, "reversible power over power"},
      {"reversible_power_kW", "kW", "W_rev", rate, kilo, 0,
      "least power for the same useful heat between the same two streams"},
-     {"cold_mean_degC", "degC", "T_L", level, 1, zero_degC,
+     {"cold_mean_degC", "degC", "T_L", level, 1, kelvin_offset,
      "entropic mean temperature of the cold stream"},
-     {"hot_mean_degC", "degC", "T_H", level, 1, zero_degC,
+     {"hot_mean_degC", "degC", "T_H", level, 1, kelvin_offset,
      "entropic mean temperature of the hot stream"},
      {"entropy_total_W_K", "W/K", "S", rate, 1, 0,
      "entropy generated in all components together"},
@@ -49,9 +49,9 @@ constexpr std::array<QuantityInfo, quantity_count> table{
      {"casing_kW", "kW", "X_a", rate, kilo, 0, "work value of the heat that leaves the casing"},
      {"unaccounted_kW", "kW", "r", rate, kilo, 0,
      "what product meter and refrigerant side disagree about, in work"},
-     {"evaporating_degC", "degC", "T_e", level, 1, zero_degC,
+     {"evaporating_degC", "degC", "T_e", level, 1, kelvin_offset,
      "dew temperature at the suction pressure"},
-     {"condensing_degC", "degC", "T_c", level, 1, zero_degC,
+     {"condensing_degC", "degC", "T_c", level, 1, kelvin_offset,
      "dew temperature at the discharge pressure"},
      {"superheat_K", "K", "SH", level, 1, 0,
      "suction temperature above the evaporating temperature"},
@@ -71,16 +71,16 @@ constexpr std::array<QuantityInfo, quantity_count> table{
      "power above what is expected, of what is expected"},
      {"energy_residual_kW", "kW", "r_E", rate, kilo, 0,
      "power and cold heat less hot heat and casing heat, by the meters"},
-     {"cold_in_degC", "degC", "T_L,in", level, 1, zero_degC, "cold stream entering"},
-     {"cold_out_degC", "degC", "T_L,out", level, 1, zero_degC, "cold stream leaving"},
+     {"cold_in_degC", "degC", "T_L,in", level, 1, kelvin_offset, "cold stream entering"},
+     {"cold_out_degC", "degC", "T_L,out", level, 1, kelvin_offset, "cold stream leaving"},
      {"cold_flow_kg_s", "kg/s", "m_L", rate, 1, 0, "mass flow of the cold stream"},
-     {"hot_in_degC", "degC", "T_H,in", level, 1, zero_degC, "hot stream entering"},
-     {"hot_out_degC", "degC", "T_H,out", level, 1, zero_degC, "hot stream leaving"},
+     {"hot_in_degC", "degC", "T_H,in", level, 1, kelvin_offset, "hot stream entering"},
+     {"hot_out_degC", "degC", "T_H,out", level, 1, kelvin_offset, "hot stream leaving"},
      {"hot_flow_kg_s", "kg/s", "m_H", rate, 1, 0, "mass flow of the hot stream"},
-     {"discharge_degC", "degC", "T_2", level, 1, zero_degC,
+     {"discharge_degC", "degC", "T_2", level, 1, kelvin_offset,
      "refrigerant leaving the compressor"},
      {"casing_heat_kW", "kW", "Q_a", rate, kilo, 0, "heat that leaves the casing"},
-     {"reference_degC", "degC", "T_0", level, 1, zero_degC,
+     {"reference_degC", "degC", "T_0", level, 1, kelvin_offset,
      "temperature at which entropy is turned into lost work"},
      }
 };

@@ -1,7 +1,9 @@
 #include "thermo/cycle/inputs.h"
 
+#include <algorithm>
 #include <cmath>
 #include <initializer_list>
+#include <iterator>
 #include <limits>
 #include <numbers>
 
@@ -76,30 +78,26 @@ void refuse_second_circuit(Inputs& inputs, const ModelPoint& point) {
 }
 
 // GUM F.1.2.3: the errors of a matched pair's points have a part in common.
+void correlate_pair(Inputs& inputs, const ModelPoint& a, const ModelPoint& b) {
+  const auto first = static_cast<std::size_t>(a.role);
+  const auto second = static_cast<std::size_t>(b.role);
+  if (a.pair && a.pair == b.pair && first != second && first < measured_inputs &&
+      second < measured_inputs && inputs[a.role] && inputs[b.role]) {
+    inputs.errors.correlate(first, second, std::sqrt(a.shared_variance * b.shared_variance));
+  }
+}
+
 void correlate_pairs(Inputs& inputs, const MachineModel& model) {
-  for (std::size_t i = 0; i < model.points.size(); ++i) {
-    const ModelPoint& a = model.points[i];
-    if (!a.pair || static_cast<std::size_t>(a.role) >= measured_inputs) {
-      continue;
-    }
-    for (std::size_t j = i + 1; j < model.points.size(); ++j) {
-      const ModelPoint& b = model.points[j];
-      if (b.pair == a.pair && static_cast<std::size_t>(b.role) < measured_inputs &&
-          inputs[a.role] && inputs[b.role] && a.role != b.role) {
-        inputs.errors.correlate(static_cast<std::size_t>(a.role), static_cast<std::size_t>(b.role),
-                                std::sqrt(a.shared_variance * b.shared_variance));
-      }
+  for (auto a = model.points.begin(); a != model.points.end(); ++a) {
+    for (auto b = std::next(a); b != model.points.end(); ++b) {
+      correlate_pair(inputs, *a, *b);
     }
   }
 }
 
 bool all(const UsableRoles& usable, std::initializer_list<Role> roles) {
-  for (const Role role : roles) {
-    if (!usable.at(static_cast<std::size_t>(role))) {
-      return false;
-    }
-  }
-  return true;
+  return std::ranges::all_of(
+      roles, [&usable](Role role) { return usable.at(static_cast<std::size_t>(role)); });
 }
 
 }  // namespace

@@ -15,7 +15,7 @@ namespace {
 
 using enum Quantity;
 
-constexpr double quiet_NaN = std::numeric_limits<double>::quiet_NaN();
+constexpr double not_known = std::numeric_limits<double>::quiet_NaN();
 constexpr double off_share = 0.02;    // of rated power: standby and oil heaters (judgement)
 constexpr double low_share = 0.10;    // of rated power (judgement, no published figure)
 constexpr double least_lift_K = 3.0;  // (judgement, no published figure)
@@ -260,7 +260,7 @@ Ledger ledger_of(const MachineModel& model, const Scan& scan, Mode mode) {
   Ledger ledger{.inputs = read_inputs(model, scan), .values = {}};
   const std::optional<Reason> idle = why_idle(model, ledger.inputs, mode);
   ledger[power] = ledger.inputs[Role::power];
-  ledger[power_expected] = refuse(ReasonCode::no_baseline, {}, quiet_NaN);
+  ledger[power_expected] = refuse(ReasonCode::no_baseline, {}, not_known);
   ledger[power_residual] = ledger[power_expected];
   fill_streams(ledger, model, mode);
   fill_lift(ledger, model.duty);
@@ -282,6 +282,17 @@ Ledger ledger_of(const MachineModel& model, const Scan& scan, Mode mode) {
   return ledger;
 }
 
+std::vector<Contribution> contributions(const Number& number, const Errors& errors) {
+  std::vector<Contribution> parts;
+  for (std::size_t i = 0; i < input_count; ++i) {
+    if (number.by.at(i) != 0.0) {
+      parts.push_back(
+          {.input = input_name(i), .sensitivity_SI = number.by.at(i), .u_SI = errors.u(i)});
+    }
+  }
+  return parts;
+}
+
 }  // namespace
 
 Assessment assess(const MachineModel& model, const Scan& scan, Mode mode) {
@@ -301,16 +312,8 @@ Assessment assess(const MachineModel& model, const Scan& scan, Mode mode) {
 Result<std::vector<Contribution>> uncertainty_budget(const MachineModel& model, const Scan& scan,
                                                      Mode mode, Quantity quantity) {
   const Ledger ledger = ledger_of(model, scan, mode);
-  return ledger[quantity].map([&ledger](const Number& number) {
-    std::vector<Contribution> parts;
-    for (std::size_t i = 0; i < input_count; ++i) {
-      if (number.by.at(i) != 0.0) {
-        parts.push_back({.input = input_name(i),
-                         .sensitivity_SI = number.by.at(i),
-                         .u_SI = ledger.inputs.errors.u(i)});
-      }
-    }
-    return parts;
+  return ledger[quantity].map([&errors = ledger.inputs.errors](const Number& number) {
+    return contributions(number, errors);
   });
 }
 

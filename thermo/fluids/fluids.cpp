@@ -17,7 +17,7 @@ std::span<const Fluid* const> fluids() {
 }
 
 const Fluid* fluid_named(std::string_view name) {
-  const auto found = std::find_if(all.begin(), all.end(), [name](const Fluid* fluid) {
+  const auto* const found = std::find_if(all.begin(), all.end(), [name](const Fluid* fluid) {
     return name == fluid->name || (!fluid->second_name.empty() && name == fluid->second_name);
   });
   return found == all.end() ? nullptr : *found;

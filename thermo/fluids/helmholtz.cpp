@@ -118,6 +118,28 @@ void Isotherm::set_groups() {
   }
 }
 
+// The sums over the groups of one decay, without its exponential.
+template <bool with_tau>
+Reduced Isotherm::before_decay(const PowerTerms::Decay& decay,
+                               std::span<const double> delta_powers) const {
+  Reduced part{};
+  for (std::size_t i = decay.begin; i < decay.end; ++i) {
+    const PowerTerms::Group& group = fluid_->residual.groups()[i];
+    const Coefficient& of = groups_[i];
+    const double delta_power = delta_powers[group.delta_power];
+    const double value = of.c * delta_power;
+    part.a += value;
+    part.d += value * group.d;
+    part.dd += value * group.d * (group.d - 1.0);
+    if constexpr (with_tau) {
+      part.t += of.ct * delta_power;
+      part.dt += of.ct * delta_power * group.d;
+      part.tt += of.ctt * delta_power;
+    }
+  }
+  return part;
+}
+
 // With u = l delta^l and the sums over a group of equal l, x^k the k-th falling power of d:
 // d of c delta^d exp(-delta^l) is (d - u), dd is d (d - 1) - 2 d u + u + u^2 - l u.
 template <bool with_tau>
@@ -130,21 +152,7 @@ void Isotherm::add_powers(double delta, Reduced& sum) const {
     powers[k] = powers[k / 2] * powers[k - k / 2];
   }
   for (const PowerTerms::Decay& decay : terms.decays()) {
-    Reduced part{};
-    for (std::size_t i = decay.begin; i < decay.end; ++i) {
-      const PowerTerms::Group& group = terms.groups()[i];
-      const Coefficient& of = groups_[i];
-      const double delta_power = powers[group.delta_power];
-      const double value = of.c * delta_power;
-      part.a += value;
-      part.d += value * group.d;
-      part.dd += value * group.d * (group.d - 1.0);
-      if constexpr (with_tau) {
-        part.t += of.ct * delta_power;
-        part.dt += of.ct * delta_power * group.d;
-        part.tt += of.ctt * delta_power;
-      }
-    }
+    const Reduced part = before_decay<with_tau>(decay, powers);
     const double l = decay.l;
     const double u = l * powers[decay.delta_power];
     const double factor = l > 0.0 ? std::exp(-powers[decay.delta_power]) : 1.0;

@@ -12,6 +12,7 @@
 
 #include <array>
 #include <cstddef>
+#include <span>
 
 namespace lostwork {
 
@@ -65,6 +66,9 @@ class Isotherm {
   };
   void set_ideal_part();
   void set_groups();
+  template <bool with_tau>
+  [[nodiscard]] Reduced before_decay(const PowerTerms::Decay& decay,
+                                     std::span<const double> delta_powers) const;
   template <bool with_tau>
   void add_powers(double delta, Reduced& sum) const;
   template <bool with_tau>

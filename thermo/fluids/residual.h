@@ -103,15 +103,19 @@ class PowerTerms {
     std::sort(powers_.begin() + 1, powers_.begin() + to_difference(power_count_),
               [](const TauPower& a, const TauPower& b) { return a.t < b.t; });
     for (std::size_t i = 1; i < power_count_; ++i) {
-      for (std::size_t first = 0; first < i * i; ++first) {
-        const std::size_t left = first / i;
-        const std::size_t middle = first % i;
-        const std::size_t right = power_of(powers_[i].t - powers_[left].t - powers_[middle].t);
-        if (right < i) {
-          powers_[i].by_exp = false;
-          powers_[i].factors = {left, middle, right};
-          break;
-        }
+      set_factors(i);
+    }
+  }
+  // Makes a power from earlier ones, where three of them have its exponent for their sum.
+  constexpr void set_factors(std::size_t i) {
+    for (std::size_t first = 0; first < i * i; ++first) {
+      const std::size_t left = first / i;
+      const std::size_t middle = first % i;
+      const std::size_t right = power_of(powers_[i].t - powers_[left].t - powers_[middle].t);
+      if (right < i) {
+        powers_[i].by_exp = false;
+        powers_[i].factors = {left, middle, right};
+        return;
       }
     }
   }

@@ -77,12 +77,14 @@ double spinodal_kgm3(const Isotherm& isotherm, bool liquid) {
   const double critical = isotherm.fluid().critical_rho_kgm3;
   double unstable = critical;
   double stable = critical;
-  for (double step = 1e-5; step < 0.9; step *= 1.5) {
+  double step = 1e-5;
+  while (step < 0.9) {
     stable = critical * (liquid ? 1.0 + step : 1.0 - step);
     if (isotherm.slope(stable).p_by_rho > 0.0) {
       break;
     }
     unstable = stable;
+    step *= 1.5;
   }
   for (int halving = 0; halving < 50; ++halving) {
     const double middle = 0.5 * (stable + unstable);

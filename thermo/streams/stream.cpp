@@ -109,14 +109,14 @@ Result<StreamState> state_of(const WaterStream& /*water*/, double T_K) {
 }
 
 Result<StreamState> state_of(const ConstantStream& stream, double T_K) {
-  const bool sound = std::isfinite(stream.rho_cp_JmK) && stream.rho_cp_JmK > 0.0 &&
+  const bool sound = std::isfinite(stream.rho_cp_SI) && stream.rho_cp_SI > 0.0 &&
                      std::isfinite(stream.rho_kgm3) && stream.rho_kgm3 > 0.0;
   if (!sound) {
     return Refusal{
-        Reason{ReasonCode::implausible, "stream", stream.rho_cp_JmK}
+        Reason{ReasonCode::implausible, "stream", stream.rho_cp_SI}
     };
   }
-  const double cp_JkgK = stream.rho_cp_JmK / stream.rho_kgm3;
+  const double cp_JkgK = stream.rho_cp_SI / stream.rho_kgm3;
   return StreamState{.rho_kgm3 = stream.rho_kgm3,
                      .h_Jkg = cp_JkgK * (T_K - ice_point_T_K),
                      .s_JkgK = cp_JkgK * std::log(T_K / ice_point_T_K),

@@ -18,8 +18,8 @@ struct WaterStream {};
 // A liquid of constant volumetric heat capacity, for sources that state one and for brines until
 // they have their own equation.
 struct ConstantStream {
-  double rho_cp_JmK = 4.18e6;  // J/(m3 K)
-  double rho_kgm3 = 1000.0;    // turns a mass flow into a volume flow, nothing else
+  double rho_cp_SI = 4.18e6;  // J/(m3 K)
+  double rho_kgm3 = 1000.0;   // turns a mass flow into a volume flow, nothing else
 };
 
 using StreamFluid = std::variant<WaterStream, ConstantStream>;

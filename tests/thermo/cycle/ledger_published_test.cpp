@@ -23,8 +23,8 @@ class LaboratoryChiller : public testing::TestWithParam<std::size_t> {
     MachineModel& model = machine.model;
     model.refrigerant = fluid_named("R134a");
     model.evaporator = EvaporatorKind::flooded;
-    model.cold.fluid = ConstantStream{.rho_cp_JmK = 4.1807e6};
-    model.hot.fluid = ConstantStream{.rho_cp_JmK = 4.1807e6};
+    model.cold.fluid = ConstantStream{.rho_cp_SI = 4.1807e6};
+    model.hot.fluid = ConstantStream{.rho_cp_SI = 4.1807e6};
     model.rated_power_W = 90e3;
     using enum Role;
     add(cold_in_temperature, celsius("chw_in_C"), 0.1);

@@ -88,7 +88,7 @@ TEST(TypicalScan, FitsAFloodedEvaporator) {
 
 TEST(TypicalScan, RefusesAStreamWithoutAHeatCapacity) {
   MachineModel model = model_with(Duty::cooling, everything);
-  model.hot.fluid = ConstantStream{.rho_cp_JmK = 0.0};
+  model.hot.fluid = ConstantStream{.rho_cp_SI = 0.0};
   const auto scan = typical_scan(model, ordinary(model));
   ASSERT_FALSE(scan);
   EXPECT_EQ(scan.error().code, ReasonCode::implausible);

@@ -84,7 +84,7 @@ TEST(AnyStream, RefusesWhatIsNotATemperature) {
 
 TEST(ConstantStream, HasTheHeatCapacityOfItsVolume) {
   const StreamState found =
-      stream_state(ConstantStream{.rho_cp_JmK = 4.2e6, .rho_kgm3 = 1050.0}, 283.15).value();
+      stream_state(ConstantStream{.rho_cp_SI = 4.2e6, .rho_kgm3 = 1050.0}, 283.15).value();
   EXPECT_DOUBLE_EQ(found.cp_JkgK, 4000.0);
   EXPECT_DOUBLE_EQ(found.h_Jkg, 40000.0);
   EXPECT_DOUBLE_EQ(found.s_JkgK, 4000.0 * std::log(283.15 / 273.15));
@@ -93,7 +93,7 @@ TEST(ConstantStream, HasTheHeatCapacityOfItsVolume) {
 }
 
 TEST(ConstantStream, RefusesAHeatCapacityThatIsNoneOfALiquid) {
-  EXPECT_EQ(stream_state(ConstantStream{.rho_cp_JmK = 0.0}, 283.15).error().code,
+  EXPECT_EQ(stream_state(ConstantStream{.rho_cp_SI = 0.0}, 283.15).error().code,
             ReasonCode::implausible);
 }
 
