@@ -35,6 +35,10 @@ struct Best {
   std::size_t first = 0;
 };
 
+bool cheaper(const Best& a, const Best& b) {
+  return a.cost < b.cost;
+}
+
 // How many of the ordered needs from `first` on can be in one block, and where each such block
 // ends.
 std::vector<std::uint32_t> ends_of_blocks(std::span<const RegisterNeed> needs,
@@ -60,11 +64,10 @@ std::vector<Best> best_plans(std::span<const RegisterNeed> needs,
     std::size_t after = first;
     for (const std::uint32_t end : ends_of_blocks(needs, order.subspan(first), limit)) {
       const std::uint32_t size = end - needs[order[first]].address;
-      const double cost = best[first].cost + limit.request_cost + limit.unit_cost * size;
+      const Best next{.cost = best[first].cost + limit.request_cost + limit.unit_cost * size,
+                      .first = first};
       ++after;
-      if (cost < best[after].cost) {
-        best[after] = {.cost = cost, .first = first};
-      }
+      best[after] = std::min(best[after], next, cheaper);
     }
   }
   return best;

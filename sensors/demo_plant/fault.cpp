@@ -80,7 +80,7 @@ std::string_view trimmed(std::string_view text) {
 
 std::string short_number(double value) {
   std::array<char, 32> text{};
-  const auto end = std::to_chars(text.data(), text.data() + text.size(), value).ptr;
+  char* const end = std::to_chars(text.data(), text.data() + text.size(), value).ptr;
   return {text.data(), end};
 }
 
@@ -226,6 +226,7 @@ const Form& form_named(std::string_view name) {
       std::find_if(forms.begin(), forms.end(), [name](const Form& f) { return f.name == name; });
   if (form == forms.end()) {
     std::vector<std::string_view> names;
+    names.reserve(forms.size());
     for (const Form& f : forms) {
       names.push_back(f.name);
     }

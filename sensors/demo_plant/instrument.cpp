@@ -51,6 +51,16 @@ double constant_error(const Instrument& instrument, std::uint64_t seed, std::uin
   return own * half + share_of_limit * (limit - half) * common;
 }
 
+std::vector<std::string_view> ids_of(Dimension wanted) {
+  std::vector<std::string_view> ids;
+  for (const Instrument& instrument : instruments()) {
+    if (dimension(instrument.point.role) == wanted) {
+      ids.emplace_back(instrument.point.id);
+    }
+  }
+  return ids;
+}
+
 }  // namespace
 
 std::span<const PlantDevice> plant_devices() {
@@ -60,6 +70,7 @@ std::span<const PlantDevice> plant_devices() {
 std::span<const std::string_view> plant_device_ids() {
   static const auto ids = [] {
     std::vector<std::string_view> names;
+    names.reserve(devices.size());
     for (const PlantDevice& device : devices) {
       names.push_back(device.id);
     }
@@ -69,15 +80,7 @@ std::span<const std::string_view> plant_device_ids() {
 }
 
 std::span<const std::string_view> plant_temperature_sensors() {
-  static const auto ids = [] {
-    std::vector<std::string_view> names;
-    for (const Instrument& instrument : instruments()) {
-      if (dimension(instrument.point.role) == Dimension::temperature) {
-        names.emplace_back(instrument.point.id);
-      }
-    }
-    return names;
-  }();
+  static const auto ids = ids_of(Dimension::temperature);
   return ids;
 }
 

@@ -42,8 +42,8 @@ struct Instrument {
 
 inline constexpr double plant_altitude_m = 12.0;
 
-// What the instrument shows now, in the point's unit, before its register rounds it; nothing while
-// it is broken. Like a real one it stops at the ends of its range.
-[[nodiscard]] std::optional<double> shown(const Plant& plant, std::size_t instrument);
+// What the instrument of this number shows now, in the point's unit, before its register rounds it;
+// nothing while it is broken. Like a real one it stops at the ends of its range.
+[[nodiscard]] std::optional<double> shown(const Plant& plant, std::size_t number);
 
 }  // namespace lostwork

@@ -38,7 +38,7 @@ double normal(const NoiseStream& noise, std::int64_t index) {
   const std::uint64_t third = finalised(second);
   const std::int64_t sum = sum_of_lanes(first) + sum_of_lanes(second) + sum_of_lanes(third);
   // Twelve lanes, each even over 0..65535: mean 6 * 65535, variance 65536^2 - 1.
-  return static_cast<double>(sum - 6 * 65535) / 65536.0;
+  return static_cast<double>(sum - std::int64_t{6} * 65535) / 65536.0;
 }
 
 double wander(const NoiseStream& noise, Instant time, Span spacing) {

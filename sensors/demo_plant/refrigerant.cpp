@@ -24,7 +24,7 @@ struct Place {
 };
 
 Place place(const TableAxis& axis, double x) {
-  const double last = static_cast<double>(axis.count - 1);
+  const auto last = static_cast<double>(axis.count - 1);
   const double at = std::clamp((x - axis.first) / axis.step, 0.0, last);
   const auto cell = static_cast<std::size_t>(at);
   const std::size_t first = std::min(cell == 0 ? 0 : cell - 1, axis.count - 4);

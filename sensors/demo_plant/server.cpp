@@ -10,6 +10,7 @@
 #include <netinet/in.h>
 #include <netinet/tcp.h>
 #include <poll.h>
+#include <span>
 #include <string>
 #include <sys/eventfd.h>
 #include <sys/socket.h>
@@ -131,17 +132,22 @@ class DemoServer::Loop {
       if (::poll(waiting.data(), waiting.size(), -1) < 0) {
         continue;  // interrupted
       }
-      std::vector<Client> kept;
-      for (std::size_t i = 0; i < clients_.size(); ++i) {
-        if (waiting[i + 2].revents == 0 || serve(clients_[i])) {
-          kept.push_back(std::move(clients_[i]));
-        }
-      }
-      clients_ = std::move(kept);
+      serve_all(std::span{waiting}.subspan(2));
       if (waiting[1].revents != 0) {
         accept_one();
       }
     }
+  }
+
+  // The clients' polls in their order.
+  void serve_all(std::span<const pollfd> polled) {
+    std::vector<Client> kept;
+    for (std::size_t i = 0; i < clients_.size(); ++i) {
+      if (polled[i].revents == 0 || serve(clients_[i])) {
+        kept.push_back(std::move(clients_[i]));
+      }
+    }
+    clients_ = std::move(kept);
   }
 
   void accept_one() {
