@@ -55,12 +55,12 @@ bool ColumnWriter::put_dictionary(std::span<const std::uint64_t> values, unsigne
   std::vector<std::uint8_t> places(values.size());
   std::size_t count = 0;
   for (std::size_t i = 0; i < values.size(); ++i) {
-    const auto end = different.begin() + static_cast<std::ptrdiff_t>(count);
-    const auto place = std::find(different.begin(), end, values[i]);
+    const auto* const end = different.begin() + static_cast<std::ptrdiff_t>(count);
+    const auto* const place = std::find(different.cbegin(), end, values[i]);
+    if (place == end && count == most) {
+      return false;
+    }
     if (place == end) {
-      if (count == most) {
-        return false;
-      }
       different.at(count++) = values[i];
     }
     places[i] = static_cast<std::uint8_t>(place - different.begin());

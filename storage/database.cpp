@@ -1,8 +1,8 @@
 #include "storage/database.h"
 
-#include <cstring>
 #include <memory>
 #include <sys/stat.h>
+#include <system_error>
 #include <utility>
 
 #include <sqlite3.h>
@@ -15,7 +15,7 @@ constexpr int busy_wait_ms = 2000;
 
 std::string io_reason(sqlite3* connection) {
   const int error = connection == nullptr ? 0 : sqlite3_system_errno(connection);
-  return error == 0 ? std::string{} : std::string{" ("} + std::strerror(error) + ")";
+  return error == 0 ? std::string{} : " (" + std::generic_category().message(error) + ")";
 }
 
 std::string reason(sqlite3* connection, int code) {
@@ -189,7 +189,7 @@ void Statement::bind(int parameter, std::span<const std::uint8_t> blob) {
   }
 }
 
-void Statement::bind(int parameter, Null) {
+void Statement::bind(int parameter, Null /*nothing*/) {
   if (const int code = sqlite3_bind_null(statement_, parameter); code != SQLITE_OK) {
     database_.fail(code);
   }

@@ -15,6 +15,7 @@
 
 #include <algorithm>
 #include <map>
+#include <span>
 #include <stdexcept>
 #include <utility>
 
@@ -64,6 +65,40 @@ struct KeyRange {
 KeyRange blocks_of(std::int64_t machine, Instant from, Instant to) {
   return {.first = key_of(machine, begin_of(hour, clamped(from))),
           .last = key_of(machine, clamped(to - Span{1}))};
+}
+
+// The stored scan's readings of these points; `stored` names those that it has.
+Scan in_order_of(const std::vector<std::string>& points, const Scan& scan,
+                 const std::vector<std::string>& stored) {
+  Scan out{.time = scan.time, .readings = {}};
+  for (const std::string& point : points) {
+    const auto at = std::find(stored.begin(), stored.end(), point);
+    const auto place = static_cast<std::size_t>(at - stored.begin());
+    out.readings.push_back(place < scan.readings.size()
+                               ? scan.readings[place]
+                               : Reading{.quality = Quality::timeout, .time = scan.time});
+  }
+  return out;
+}
+
+std::vector<const Scan*> scans_within(const SampleBlock& block, Instant from, Instant to) {
+  std::vector<const Scan*> out;
+  for (const Scan& scan : block.scans) {
+    if (scan.time >= from && scan.time < to) {
+      out.push_back(&scan);
+    }
+  }
+  return out;
+}
+
+// The readings that these scans have at one place.
+void append_readings(std::vector<StoredReading>& out, std::span<const Scan* const> scans,
+                     std::size_t place) {
+  for (const Scan* scan : scans) {
+    if (place < scan->readings.size()) {
+      out.push_back({.scan_time = scan->time, .reading = scan->readings[place]});
+    }
+  }
 }
 
 }  // namespace
@@ -127,6 +162,26 @@ class History::Implementation {
     return out;
   }
 
+  std::vector<QuantityPeriod> periods(std::int64_t machine, const BucketPlan& plan,
+                                      Quantity quantity) {
+    std::vector<QuantityPeriod> out;
+    Statement select{database, sums_sql(plan.source)};
+    const Instant end = plan.begin + static_cast<std::int64_t>(plan.count) * plan.width;
+    const KeyRange keys = blocks_of(machine, plan.begin, end);
+    // A day's or an hour's own key lies within the span.
+    Rows rows{select, plan.source == minute ? keys.first : key_of(machine, plan.begin), keys.last};
+    while (rows.next()) {
+      const auto block =
+          decode_sums_of(rows.integer(0), plan.source, rows.blob(1), quantity, words);
+      if (block) {
+        out.insert(out.end(), block->begin(), block->end());
+      } else {
+        ++damaged;
+      }
+    }
+    return out;
+  }
+
   Database database;
   Words words{database};
   std::map<std::uint32_t, std::vector<std::string>> layouts;
@@ -148,18 +203,8 @@ std::vector<Scan> History::scans(std::string_view machine, const std::vector<std
   std::vector<Scan> out;
   implementation_->each_sample_block(machine, from, to, [&](const SampleBlock& block) {
     const auto& stored = implementation_->points_of(block.layout);
-    for (const Scan& scan : block.scans) {
-      if (scan.time < from || scan.time >= to) {
-        continue;
-      }
-      Scan& whole = out.emplace_back(Scan{.time = scan.time, .readings = {}});
-      for (const std::string& point : points) {
-        const auto at = std::find(stored.begin(), stored.end(), point);
-        const auto place = static_cast<std::size_t>(at - stored.begin());
-        whole.readings.push_back(place < scan.readings.size()
-                                     ? scan.readings[place]
-                                     : Reading{.quality = Quality::timeout, .time = scan.time});
-      }
+    for (const Scan* scan : scans_within(block, from, to)) {
+      out.push_back(in_order_of(points, *scan, stored));
     }
     return out.size() < limit + most_scans_a_block * 60;
   });
@@ -177,11 +222,7 @@ std::vector<StoredReading> History::samples(std::string_view machine, std::strin
     const auto& stored = implementation_->points_of(block.layout);
     const auto place =
         static_cast<std::size_t>(std::find(stored.begin(), stored.end(), point) - stored.begin());
-    for (const Scan& scan : block.scans) {
-      if (scan.time >= from && scan.time < to && place < scan.readings.size()) {
-        out.push_back({.scan_time = scan.time, .reading = scan.readings[place]});
-      }
-    }
+    append_readings(out, scans_within(block, from, to), place);
     return out.size() < limit + most_scans_a_block * 60;
   });
   std::stable_sort(out.begin(), out.end(), [](const StoredReading& a, const StoredReading& b) {
@@ -201,20 +242,7 @@ std::vector<Bucket> History::trend(const TrendRequest& request) const {
   std::vector<QuantityPeriod> periods;
   const Transaction snapshot{implementation_->database, Transaction::Kind::read};
   if (const auto machine = machine_number(implementation_->database, request.machine)) {
-    Statement select{implementation_->database, sums_sql(plan.source)};
-    const Instant end = plan.begin + static_cast<std::int64_t>(plan.count) * plan.width;
-    const KeyRange keys = blocks_of(*machine, plan.begin, end);
-    // A day's or an hour's own key lies within the span.
-    Rows rows{select, plan.source == minute ? keys.first : key_of(*machine, plan.begin), keys.last};
-    while (rows.next()) {
-      const auto block = decode_sums_of(rows.integer(0), plan.source, rows.blob(1),
-                                        request.quantity, implementation_->words);
-      if (block) {
-        periods.insert(periods.end(), block->begin(), block->end());
-      } else {
-        ++implementation_->damaged;
-      }
-    }
+    periods = implementation_->periods(*machine, plan, request.quantity);
   }
   return buckets_of(plan, periods);
 }

@@ -17,27 +17,32 @@ MinuteWriter::MinuteWriter(Database& database, Words& words)
 
 MinuteWriter::Machine& MinuteWriter::machine(std::int64_t number) {
   const auto [at, first_time] = machines_.try_emplace(number);
-  Machine& out = at->second;
-  if (!first_time) {
-    return out;
+  if (first_time) {
+    at->second.newest = newest_in_file(number);
   }
+  return at->second;
+}
+
+std::optional<Instant> MinuteWriter::newest_in_file(std::int64_t number) {
+  std::optional<Instant> newest;
   {
     Rows rows{last_key_, key_of(number, first_storable), key_of(number, last_storable)};
     if (rows.next() && !rows.is_null(0)) {
-      out.newest = time_of(rows.integer(0));
+      newest = time_of(rows.integer(0));
     }
   }
-  if (out.newest) {
-    // Blocks of one hour may lie within each other.
-    const Instant begin = begin_of(hour, *out.newest);
-    Rows rows{hour_blocks_, key_of(number, begin), key_of(number, begin + hour - Span{1})};
-    while (rows.next()) {
-      if (const auto begins = decode_sums_begins(rows.integer(0), minute, rows.blob(1))) {
-        out.newest = std::max(*out.newest, begins->back());
-      }
+  if (!newest) {
+    return std::nullopt;
+  }
+  // Blocks of one hour may lie within each other.
+  const Instant begin = begin_of(hour, *newest);
+  Rows rows{hour_blocks_, key_of(number, begin), key_of(number, begin + hour - Span{1})};
+  while (rows.next()) {
+    if (const auto begins = decode_sums_begins(rows.integer(0), minute, rows.blob(1))) {
+      newest = std::max(*newest, begins->back());
     }
   }
-  return out;
+  return newest;
 }
 
 std::optional<MinuteWriter::Hand> MinuteWriter::found(std::int64_t machine, Instant minute_begin) {
@@ -93,18 +98,18 @@ void MinuteWriter::add(std::int64_t number, const ScanRow& row) {
   known.hand->dirty = true;
 }
 
-void MinuteWriter::put_away(std::int64_t number, Hand& hand) {
+void MinuteWriter::put_away(std::int64_t number, const Hand& hand) {
   if (hand.in_file) {
     if (hand.dirty) {
       write_block(number, hand.block);
     }
     return;
   }
-  Period& period = hand.block.front();
+  const Period& period = hand.block.front();
   if (!waiting_.empty() && begin_of(hour, waiting_.front().begin) != begin_of(hour, period.begin)) {
     write_waiting(number);
   }
-  waiting_.push_back(std::move(period));
+  waiting_.push_back(period);
 }
 
 void MinuteWriter::write_block(std::int64_t machine, const std::vector<Period>& block) {
@@ -135,10 +140,12 @@ PeriodSums MinuteWriter::hour_from_file(std::int64_t machine, Instant begin) {
   PeriodSums out;
   Rows rows{hour_blocks_, key_of(machine, begin), key_of(machine, begin + hour - Span{1})};
   while (rows.next()) {
-    if (const auto block = decode_sums(rows.integer(0), minute, rows.blob(1), words_)) {
-      for (const Period& period : *block) {
-        lostwork::add(out, period.sums);
-      }
+    const auto block = decode_sums(rows.integer(0), minute, rows.blob(1), words_);
+    if (!block) {
+      continue;
+    }
+    for (const Period& period : *block) {
+      lostwork::add(out, period.sums);
     }
   }
   return out;

@@ -22,9 +22,10 @@ class MinuteWriter {
  public:
   explicit MinuteWriter(Database& database, Words& words);
 
-  // Scans of one machine in time order; then finish() before the next machine's.
-  void add(std::int64_t machine, const ScanRow& row);
-  void finish(std::int64_t machine);
+  // number: of the machine, as in the file. Scans of one machine in time order; then finish()
+  // before the next machine's.
+  void add(std::int64_t number, const ScanRow& row);
+  void finish(std::int64_t number);
   // Of the minutes in that hour that are in the file.
   [[nodiscard]] PeriodSums hour_from_file(std::int64_t machine, Instant begin);
   // After a transaction that failed.
@@ -43,9 +44,10 @@ class MinuteWriter {
     std::optional<Hand> hand;
   };
   [[nodiscard]] Machine& machine(std::int64_t number);
+  [[nodiscard]] std::optional<Instant> newest_in_file(std::int64_t number);
   [[nodiscard]] std::optional<Hand> found(std::int64_t machine, Instant minute_begin);
   void take_in_hand(std::int64_t number, Machine& machine, Instant minute_begin);
-  void put_away(std::int64_t number, Hand& hand);
+  void put_away(std::int64_t number, const Hand& hand);
   void write_block(std::int64_t machine, const std::vector<Period>& block);
   void write_waiting(std::int64_t machine);
 

@@ -18,18 +18,23 @@ PeriodWriter::Opened PeriodWriter::open(std::int64_t machine, Instant time, Word
   if (current.period.sums.scans == 0 || current.period.begin != begin) {
     write(machine, current, words);
     current.period = {.begin = begin, .sums = {}};
-    const std::int64_t key = key_of(machine, begin);
-    Rows rows{select_, key};
-    if (rows.next()) {
-      const auto read = decode_sums(key, length_, rows.blob(0), words);
-      damaged = !read.has_value();
-      if (read) {
-        current.period = read->front();
-      }
-    }
+    damaged = !take_up(machine, current.period, words);
   }
   current.dirty = true;
   return {.sums = current.period.sums, .damaged = damaged};
+}
+
+bool PeriodWriter::take_up(std::int64_t machine, Period& period, Words& words) {
+  const std::int64_t key = key_of(machine, period.begin);
+  Rows rows{select_, key};
+  if (!rows.next()) {
+    return true;
+  }
+  const auto read = decode_sums(key, length_, rows.blob(0), words);
+  if (read) {
+    period = read->front();
+  }
+  return read.has_value();
 }
 
 void PeriodWriter::write(std::int64_t machine, Current& current, Words& words) {

@@ -36,6 +36,8 @@ class PeriodWriter {
     Period period;
     bool dirty = false;
   };
+  // What the file has of the period already. False: that is damaged, the period is as before.
+  [[nodiscard]] bool take_up(std::int64_t machine, Period& period, Words& words);
   void write(std::int64_t machine, Current& current, Words& words);
   Span length_;
   Statement select_;

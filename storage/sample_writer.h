@@ -21,9 +21,9 @@ class SampleWriter {
  public:
   SampleWriter(Database& database, Numbers& numbers);
 
-  // rows: of one machine, in time order, no two of one time. Gives back those that were new, in
-  // their order; they are in the file.
-  [[nodiscard]] std::vector<const ScanRow*> write(std::int64_t machine,
+  // rows: of the machine of this number, in time order, no two of one time. Gives back those that
+  // were new, in their order; they are in the file.
+  [[nodiscard]] std::vector<const ScanRow*> write(std::int64_t number,
                                                   std::span<const ScanRow* const> rows);
   // After a transaction that failed.
   void forget() { machines_.clear(); }

@@ -34,7 +34,7 @@ double weight(const QuantityValues& values, std::size_t place) {
 }
 
 void add_value(QuantitySums& sums, const Measured& value, double weight) {
-  const double u = static_cast<double>(static_cast<float>(value.u));
+  const auto u = static_cast<double>(static_cast<float>(value.u));
   sums.min = sums.count == 0 ? value.value : std::min(sums.min, value.value);
   sums.max = sums.count == 0 ? value.value : std::max(sums.max, value.value);
   sums.sum += weight * value.value;

@@ -24,6 +24,16 @@ bool is_whole(const std::optional<WindowMean>& mean) {
          std::isfinite(mean->sd_SI) && std::isfinite(mean->n_effective);
 }
 
+void put_field(const Window& window, double WindowMean::*field, ColumnWriter& out) {
+  Column column;
+  for (const auto& mean : window.values) {
+    if (is_whole(mean)) {
+      column.push_back(std::bit_cast<std::uint64_t>((*mean).*field));
+    }
+  }
+  out.put_column(column);
+}
+
 void encode(const Window& window, ColumnWriter& out) {
   out.put(layout_version);
   out.put(static_cast<std::uint8_t>(window.values.size()));
@@ -33,13 +43,7 @@ void encode(const Window& window, ColumnWriter& out) {
   }
   out.put_column(column);
   for (const auto field : fields) {
-    column.clear();
-    for (const auto& mean : window.values) {
-      if (is_whole(mean)) {
-        column.push_back(std::bit_cast<std::uint64_t>((*mean).*field));
-      }
-    }
-    out.put_column(column);
+    put_field(window, field, out);
   }
 }
 

@@ -2,7 +2,6 @@
 
 #include <array>
 #include <cerrno>
-#include <cstring>
 #include <fcntl.h>
 #include <filesystem>
 #include <stdexcept>
@@ -33,15 +32,15 @@ std::string holder(int descriptor) {
 
 WriterLock::WriterLock(const std::string& file) {
   const std::string name = real_name(file) + "-writer";
-  // NOLINTNEXTLINE(cppcoreguidelines-pro-type-vararg): the system's interface
   descriptor_ = open(name.c_str(), O_RDWR | O_CREAT | O_CLOEXEC | O_NOFOLLOW, 0600);
   if (descriptor_ < 0) {
-    throw std::runtime_error{file + ": cannot be written: " + name + ": " + std::strerror(errno)};
+    throw std::runtime_error{file + ": cannot be written: " + name + ": " +
+                             std::generic_category().message(errno)};
   }
   if (flock(descriptor_, LOCK_EX | LOCK_NB) != 0) {
     const std::string why = errno == EWOULDBLOCK
                                 ? ": another lostwork writes it" + holder(descriptor_)
-                                : std::string{": cannot be locked: "} + std::strerror(errno);
+                                : ": cannot be locked: " + std::generic_category().message(errno);
     close(descriptor_);
     throw std::runtime_error{file + why};
   }
