@@ -4,12 +4,13 @@
 #include "thermo/fluids/fluid.h"
 
 #include <algorithm>
+#include <cerrno>
 #include <cmath>
-#include <cstring>
 #include <date/tz.h>
 #include <fstream>
 #include <set>
 #include <sstream>
+#include <system_error>
 
 namespace lostwork {
 namespace {
@@ -284,7 +285,7 @@ tl::expected<PlantConfig, Problems> load_plant(const std::filesystem::path& path
         Problems{{.line = 0,
                   .key = "the file",
                   .found = {},
-                  .allowed = std::string{"cannot be read: "} + std::strerror(errno)}}};
+                  .allowed = "cannot be read: " + std::generic_category().message(errno)}}};
   }
   return read_plant_file(text.str(), path.string())
       .and_then(plant_from)

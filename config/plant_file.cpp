@@ -127,6 +127,18 @@ CasingLossEntry take_casing_loss(const TomlPlace& place) {
   return {};
 }
 
+std::vector<std::variant<std::int64_t, double>> numbers_of(const toml::array& array) {
+  std::vector<std::variant<std::int64_t, double>> out;
+  for (const toml::node& part : array) {
+    if (const auto* whole = part.as_integer()) {
+      out.emplace_back(whole->get());
+    } else if (const auto* number = part.as_floating_point()) {
+      out.emplace_back(number->get());
+    }
+  }
+  return out;
+}
+
 std::vector<std::variant<std::int64_t, double>> take_sentinels(const TomlPlace& place) {
   const toml::node* node = place.table.get("sentinels");
   if (node == nullptr) {
@@ -134,13 +146,7 @@ std::vector<std::variant<std::int64_t, double>> take_sentinels(const TomlPlace& 
   }
   std::vector<std::variant<std::int64_t, double>> out;
   if (const toml::array* array = node->as_array()) {
-    for (const toml::node& part : *array) {
-      if (const auto* whole = part.as_integer()) {
-        out.emplace_back(whole->get());
-      } else if (const auto* number = part.as_floating_point()) {
-        out.emplace_back(number->get());
-      }
-    }
+    out = numbers_of(*array);
     if (out.size() == array->size()) {
       return out;
     }
@@ -160,6 +166,22 @@ std::optional<std::chrono::sys_seconds> take_date(const toml::node* node) {
                   : std::nullopt;
 }
 
+// Those of the array that are sound and later than the one before.
+std::vector<CorrectionEntry> rising_corrections(const toml::array& array) {
+  std::vector<CorrectionEntry> out;
+  for (const toml::node& part : array) {
+    const toml::table* table = part.as_table();
+    const auto from = table != nullptr ? take_date(table->get("from")) : std::nullopt;
+    const auto add = from && table->size() == 2 && (*table)["add"].is_number()
+                         ? (*table)["add"].value<double>()
+                         : std::nullopt;
+    if (add && std::isfinite(*add) && (out.empty() || out.back().from < *from)) {
+      out.push_back({.from = *from, .add = *add});
+    }
+  }
+  return out;
+}
+
 std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
   const toml::node* node = place.table.get("corrections");
   if (node == nullptr) {
@@ -167,16 +189,7 @@ std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
   }
   std::vector<CorrectionEntry> out;
   if (const toml::array* array = node->as_array()) {
-    for (const toml::node& part : *array) {
-      const toml::table* table = part.as_table();
-      const auto from = table != nullptr ? take_date(table->get("from")) : std::nullopt;
-      const auto add = from && table->size() == 2 && (*table)["add"].is_number()
-                           ? (*table)["add"].value<double>()
-                           : std::nullopt;
-      if (add && std::isfinite(*add) && (out.empty() || out.back().from < *from)) {
-        out.push_back({.from = *from, .add = *add});
-      }
-    }
+    out = rising_corrections(*array);
     if (out.size() == array->size()) {
       return out;
     }
@@ -184,6 +197,18 @@ std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
   place.refuse(*node, "corrections",
                "[{ from = 2026-03-01, add = 0.12 }, ...] in the order of their dates");
   return {};
+}
+
+std::optional<std::array<double, 2>> take_range(const TomlPlace& place) {
+  const toml::node* node = place.table.get("range");
+  if (node == nullptr) {
+    return std::nullopt;
+  }
+  const auto range = two_numbers(*node);
+  if (!range) {
+    place.refuse(*node, "range", "[lowest, highest], two numbers in the point's unit");
+  }
+  return range;
 }
 
 template <class S>
@@ -202,12 +227,7 @@ S read_one(const TomlPlace& place, std::span<const Key<S>> keys) {
     out.accuracy = take_accuracy(place, "accuracy");
     out.sentinels = take_sentinels(place);
     out.corrections = take_corrections(place);
-    if (const toml::node* node = place.table.get("range")) {
-      out.range = two_numbers(*node);
-      if (!out.range) {
-        place.refuse(*node, "range", "[lowest, highest], two numbers in the point's unit");
-      }
-    }
+    out.range = take_range(place);
   }
   return out;
 }
@@ -259,16 +279,20 @@ class FileReader {
   void refuse_unknown() {
     for (const auto& [name, node] : root_) {
       if (std::find(known_.begin(), known_.end(), name.str()) == known_.end()) {
-        std::string allowed = "no such table; known:";
-        for (const std::string_view known : known_) {
-          allowed += ' ' + std::string{known};
-        }
-        refuse(node, name.str(), allowed);
+        refuse(node, name.str(), "no such table; known:" + known_names());
       }
     }
   }
 
  private:
+  [[nodiscard]] std::string known_names() const {
+    std::string names;
+    for (const std::string_view known : known_) {
+      names += ' ' + std::string{known};
+    }
+    return names;
+  }
+
   void refuse(const toml::node& node, std::string_view key, std::string allowed) {
     problems_.push_back({.line = line_of(node),
                          .key = std::string{key},

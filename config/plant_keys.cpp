@@ -43,25 +43,27 @@ std::string allowed_text(const Key<S>& key) {
       key.member);
 }
 
+template <class S>
+std::string standard_of(const Key<S>& key, const S& standard) {
+  return std::visit(
+      [&standard](auto member) -> std::string {
+        if constexpr (std::is_same_v<decltype(member), Other>) {
+          return "";
+        } else {
+          return standard_text(standard.*member);
+        }
+      },
+      key.member);
+}
+
 template <class S, std::size_t n>
 void add(std::vector<KeyRow>& rows, std::string_view table, const std::array<Key<S>, n>& keys) {
   const S standard{};
   for (const Key<S>& key : keys) {
-    std::string value = key.required
-                            ? "required"
-                            : std::visit(
-                                  [&standard](auto member) -> std::string {
-                                    if constexpr (std::is_same_v<decltype(member), Other>) {
-                                      return "";
-                                    } else {
-                                      return standard_text(standard.*member);
-                                    }
-                                  },
-                                  key.member);
     rows.push_back({.table = std::string{table},
                     .key = std::string{key.name},
                     .allowed = allowed_text(key),
-                    .standard = std::move(value),
+                    .standard = key.required ? "required" : standard_of(key, standard),
                     .meaning = std::string{key.meaning}});
   }
 }

@@ -90,7 +90,7 @@ class PointReader {
         out.emplace_back(*found);
       } else {
         refuse("accuracy.class", *entry.sensor_class,
-               "one of \"Pt100 AA\", \"Pt100 A\", \"Pt100 B\", \"Pt100 C\"");
+               R"(one of "Pt100 AA", "Pt100 A", "Pt100 B", "Pt100 C")");
       }
     }
     if (entry.limit) {
@@ -158,6 +158,10 @@ class PointReader {
     return FromRegister{.device = *entry_.device, .at = std::move(spec)};
   }
 
+  static std::string sentinel_text(const std::variant<std::int64_t, double>& written) {
+    return std::visit([](auto value) { return number_text(static_cast<double>(value)); }, written);
+  }
+
   void add_sentinels(RegisterSpec& spec) {
     for (const auto& written : entry_.sentinels) {
       const auto pattern =
@@ -165,9 +169,7 @@ class PointReader {
       if (pattern) {
         spec.sentinels.push_back(*pattern);
       } else {
-        refuse("sentinels",
-               std::visit([](auto v) { return number_text(static_cast<double>(v)); }, written),
-               "raw values that fit the type " + entry_.type);
+        refuse("sentinels", sentinel_text(written), "raw values that fit the type " + entry_.type);
       }
     }
   }

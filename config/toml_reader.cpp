@@ -29,7 +29,7 @@ std::string found_text(const toml::node& node) {
 }
 
 std::string allowed_number(double min, double max, bool whole) {
-  const std::string kind = whole ? "a whole number" : "a number";
+  std::string kind = whole ? "a whole number" : "a number";
   if (std::isfinite(min) && std::isfinite(max)) {
     return kind + " from " + number_text(min) + " to " + number_text(max);
   }
@@ -77,21 +77,21 @@ void take(const TomlPlace& place, std::string_view key, const toml::node& node, 
 }
 
 void take_number(const TomlPlace& place, std::string_view key, const toml::node& node, double& out,
-                 double min, double max) {
+                 const NumberRange& allowed) {
   const auto value = node.is_number() ? node.value<double>() : std::nullopt;
-  if (!value || !(*value >= min && *value <= max) || !std::isfinite(*value)) {
-    place.refuse(node, key, allowed_number(min, max, false));
+  if (!value || !(*value >= allowed.min && *value <= allowed.max) || !std::isfinite(*value)) {
+    place.refuse(node, key, allowed_number(allowed.min, allowed.max, false));
     return;
   }
   out = *value;
 }
 
 void take_whole(const TomlPlace& place, std::string_view key, const toml::node& node,
-                std::int64_t& out, double min, double max) {
+                std::int64_t& out, const NumberRange& allowed) {
   const auto* value = node.as_integer();
-  if (value == nullptr || !(static_cast<double>(value->get()) >= min) ||
-      !(static_cast<double>(value->get()) <= max)) {
-    place.refuse(node, key, allowed_number(min, max, true));
+  if (value == nullptr || !(static_cast<double>(value->get()) >= allowed.min) ||
+      !(static_cast<double>(value->get()) <= allowed.max)) {
+    place.refuse(node, key, allowed_number(allowed.min, allowed.max, true));
     return;
   }
   out = value->get();

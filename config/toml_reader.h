@@ -28,32 +28,38 @@ struct TomlPlace {
   void missing(std::string_view key, std::string allowed) const;
 };
 
+struct NumberRange {
+  double min;
+  double max;
+};
+
 // Each fills `out` or notes a problem.
 void take(const TomlPlace& place, std::string_view key, const toml::node& node, std::string& out,
           std::span<const std::string_view> choices);
 void take_number(const TomlPlace& place, std::string_view key, const toml::node& node, double& out,
-                 double min, double max);
+                 const NumberRange& allowed);
 void take_whole(const TomlPlace& place, std::string_view key, const toml::node& node,
-                std::int64_t& out, double min, double max);
+                std::int64_t& out, const NumberRange& allowed);
 void take(const TomlPlace& place, std::string_view key, const toml::node& node, bool& out);
 
 template <class S>
 void take_member(const TomlPlace& place, const Key<S>& key, const toml::node& node, S& out) {
+  const NumberRange allowed{.min = key.min, .max = key.max};
   std::visit(
-      [&place, &key, &node, &out](auto member) {
+      [&place, &key, &node, &out, &allowed](auto member) {
         using M = decltype(member);
         if constexpr (std::is_same_v<M, std::string S::*>) {
           take(place, key.name, node, out.*member, key.choices);
         } else if constexpr (std::is_same_v<M, std::optional<std::string> S::*>) {
           take(place, key.name, node, (out.*member).emplace(), key.choices);
         } else if constexpr (std::is_same_v<M, double S::*>) {
-          take_number(place, key.name, node, out.*member, key.min, key.max);
+          take_number(place, key.name, node, out.*member, allowed);
         } else if constexpr (std::is_same_v<M, std::optional<double> S::*>) {
-          take_number(place, key.name, node, (out.*member).emplace(), key.min, key.max);
+          take_number(place, key.name, node, (out.*member).emplace(), allowed);
         } else if constexpr (std::is_same_v<M, std::int64_t S::*>) {
-          take_whole(place, key.name, node, out.*member, key.min, key.max);
+          take_whole(place, key.name, node, out.*member, allowed);
         } else if constexpr (std::is_same_v<M, std::optional<std::int64_t> S::*>) {
-          take_whole(place, key.name, node, (out.*member).emplace(), key.min, key.max);
+          take_whole(place, key.name, node, (out.*member).emplace(), allowed);
         } else if constexpr (std::is_same_v<M, bool S::*>) {
           take(place, key.name, node, out.*member);
         }
@@ -61,20 +67,26 @@ void take_member(const TomlPlace& place, const Key<S>& key, const toml::node& no
       key.member);
 }
 
+template <class S>
+[[nodiscard]] std::string names_of(std::span<const Key<S>> keys) {
+  std::string names;
+  for (const Key<S>& key : keys) {
+    names += (names.empty() ? "" : ", ") + std::string{key.name};
+  }
+  return names;
+}
+
 // Fills S from its table: unknown keys, wrong types, values out of range and missing required keys
 // are problems.
 template <class S>
 [[nodiscard]] S read_by_keys(const TomlPlace& place, std::span<const Key<S>> keys) {
   S out{};
-  for (const auto& [name, node] : place.table) {
-    const auto key = std::find_if(keys.begin(), keys.end(),
-                                  [&name](const Key<S>& k) { return k.name == name.str(); });
+  for (const auto& [written, node] : place.table) {
+    const std::string_view name = written.str();
+    const auto key =
+        std::find_if(keys.begin(), keys.end(), [name](const Key<S>& k) { return k.name == name; });
     if (key == keys.end()) {
-      std::string known;
-      for (const Key<S>& k : keys) {
-        known += (known.empty() ? "" : ", ") + std::string{k.name};
-      }
-      place.refuse(node, name.str(), "no such key; known here: " + known);
+      place.refuse(node, name, "no such key; known here: " + names_of(keys));
       continue;
     }
     take_member(place, *key, node, out);
