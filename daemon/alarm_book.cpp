@@ -74,12 +74,13 @@ class Round {
   [[nodiscard]] bool is_down(std::size_t device) const {
     bool any = false;
     for (std::size_t i = 0; i < book_.watches.size(); ++i) {
-      if (book_.device_of_point[i] == device) {
-        any = true;
-        if (!is_silent(book_.watches[i], rules_.timings, now())) {
-          return false;
-        }
+      if (book_.device_of_point[i] != device) {
+        continue;
       }
+      if (!is_silent(book_.watches[i], rules_.timings, now())) {
+        return false;
+      }
+      any = true;
     }
     return any;
   }
@@ -94,7 +95,7 @@ class Round {
     return is_lost(book_.watches.at(point), rules_.timings, now()) ? Condition::yes : Condition::no;
   }
 
-  Watched watched_by(const AlarmSlot& slot) const {
+  [[nodiscard]] Watched watched_by(const AlarmSlot& slot) const {
     const std::size_t subject = *slot.subject;
     switch (slot.alarm.kind) {
       case AlarmKind::device_lost:

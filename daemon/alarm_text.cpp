@@ -88,16 +88,19 @@ std::string value_of(const SafetyMatter& matter) {
   return said({words(kind).measured, " ", setting_text(kind, *matter.value_SI)});
 }
 
+constexpr std::string_view monitor_only =
+    "This is information from a monitor, not a safety function. Follow the site's emergency and "
+    "refrigerant procedures and the local code (";
+constexpr std::string_view licensed_only =
+    "); work on the refrigerant circuit only by a licensed/certified person. The machine's safety "
+    "devices must stay in service whatever this message says.";
+
 std::string whole_safety_text(const SafetyMatter& matter, bool returned) {
   const SafetyLimit& limit = matter.limit;
   return said({matter.machine, ": ", sentence_of(matter, returned), " (", value_of(matter),
                ", limit ", setting_text(limit.kind, limit.limit_SI), " from ", limit.document,
-               ", since ", time_text(matter.since),
-               "). This is information from a monitor, not a safety function. Follow the site's "
-               "emergency and refrigerant procedures and the local code (",
-               limit.jurisdiction,
-               "); work on the refrigerant circuit only by a licensed/certified person. The "
-               "machine's safety devices must stay in service whatever this message says."});
+               ", since ", time_text(matter.since), "). ", monitor_only, limit.jurisdiction,
+               licensed_only});
 }
 
 std::string_view trouble(Quality quality) {

@@ -59,7 +59,7 @@ std::string percent(double ratio) {
 }
 
 // How wide the efficiency's 95 % interval is, of the efficiency itself.
-std::string relative_U(const Measured& efficiency) {
+std::string relative_interval(const Measured& efficiency) {
   return "+-" + percent(2.0 * efficiency.u / efficiency.value);
 }
 
@@ -69,10 +69,10 @@ void print_sensors(const std::vector<SensorWorth>& sensors, std::ostream& out) {
     const SensorWorth& s = sensors[i];
     out << (s.change == SensorChange::added ? "    adding " : "    a better ") << joined(s.roles);
     if (s.before) {
-      out << " would narrow the second-law efficiency from " << relative_U(*s.before) << " to "
-          << relative_U(s.after) << " (95 %)\n";
+      out << " would narrow the second-law efficiency from " << relative_interval(*s.before)
+          << " to " << relative_interval(s.after) << " (95 %)\n";
     } else {
-      out << " would give a second-law efficiency, " << relative_U(s.after) << " (95 %)\n";
+      out << " would give a second-law efficiency, " << relative_interval(s.after) << " (95 %)\n";
     }
   }
 }

@@ -4,7 +4,7 @@ namespace lostwork {
 namespace {
 
 // Takes one field off the front of `rest` (which is not yet at its end), quotes removed in place.
-std::string_view take_field(char*& at, char* end) {
+std::string_view take_field(char*& at, const char* end) {
   if (at == end || *at != '"') {
     char* begin = at;
     while (at != end && *at != ',') {

@@ -3,8 +3,9 @@
 #include "daemon/local_time.h"
 
 #include <algorithm>
+#include <cerrno>
 #include <charconv>
-#include <cstring>
+#include <system_error>
 #include <variant>
 
 namespace lostwork {
@@ -19,7 +20,8 @@ tl::expected<CsvHistory, std::string> CsvHistory::open(const std::filesystem::pa
                                                        const Wiring& wiring) {
   CsvHistory out{file, wiring};
   if (!*out.in_) {
-    return tl::unexpected{file.string() + ": cannot be read: " + std::strerror(errno)};
+    return tl::unexpected{file.string() +
+                          ": cannot be read: " + std::generic_category().message(errno)};
   }
   if (auto error = out.read_header()) {
     return tl::unexpected{std::move(*error)};

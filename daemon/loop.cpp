@@ -90,12 +90,7 @@ class Loop {
     spawn(take_signals());
     spawn(feed_watchdog());
     if (options_.run_for) {
-      end_.expires_after(*options_.run_for);
-      end_.async_wait([this](const boost::system::error_code& error) {
-        if (!error) {
-          stop();
-        }
-      });
+      stop_after(*options_.run_for);
     }
     if (options_.on_ready) {
       options_.on_ready(web_->port());
@@ -107,6 +102,15 @@ class Loop {
   }
 
  private:
+  void stop_after(steady_clock::duration run_for) {
+    end_.expires_after(run_for);
+    end_.async_wait([this](const boost::system::error_code& error) {
+      if (!error) {
+        stop();
+      }
+    });
+  }
+
   WebServer::Parts web_parts() {
     return {.view = view_,
             .history = history_source(plant_.database.string()),

@@ -21,6 +21,12 @@ void store_batch(const SeasonSinks& to) {
   }
 }
 
+void hand_out(const std::vector<PointReading>& readings, std::vector<ScanAssembler>& to) {
+  for (ScanAssembler& assembler : to) {
+    assembler.take(readings);
+  }
+}
+
 }  // namespace
 
 void run_past_season(const PlantConfig& config, Plant& plant, Instant until,
@@ -40,10 +46,7 @@ void run_past_season(const PlantConfig& config, Plant& plant, Instant until,
     plant.step(period - plant.time().time_since_epoch() % period);  // to the next scan's time
     bus.show(plant);
     for (Poller& poller : pollers) {
-      const std::vector<PointReading> readings = poller.poll(plant.time());
-      for (ScanAssembler& assembler : assemblers) {
-        assembler.take(readings);
-      }
+      hand_out(poller.poll(plant.time()), assemblers);
     }
     for (std::size_t m = 0; m < assemblers.size(); ++m) {
       to.pipeline.take(m, assemblers[m].scan(plant.time()));

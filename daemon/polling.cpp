@@ -69,7 +69,7 @@ struct Polling::Running : std::enable_shared_from_this<Running> {
   }
 
   // False where it was not reached: stopped, or the plant's clock was set back meanwhile.
-  asio::awaitable<bool> sleep_until(asio::steady_timer& timer, Instant due) {
+  asio::awaitable<bool> sleep_until(asio::steady_timer& timer, Instant due) const {
     Instant now = parts.clock.now();
     while (!stopped && now < due) {
       const auto left = parts.clock.until(due);
@@ -120,7 +120,7 @@ struct Polling::Running : std::enable_shared_from_this<Running> {
     }
   }
 
-  asio::awaitable<void> wait_for_buses(MachineRun& machine, Instant deadline) {
+  asio::awaitable<void> wait_for_buses(MachineRun& machine, Instant deadline) const {
     machine.waiting = !machine.assembler.complete(machine.due);
     while (!stopped && machine.waiting && parts.clock.now() < deadline) {
       const auto left = parts.clock.until(deadline);
@@ -189,7 +189,7 @@ Polling::Polling(boost::asio::io_context& io, Parts parts)
   running_->start();
 }
 
-Polling::~Polling() {
+Polling::~Polling() {  // NOLINT(bugprone-exception-escape): an Asio timer's cancel() has no error
   running_->stop();
 }
 

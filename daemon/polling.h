@@ -40,7 +40,7 @@ class Polling {
   Polling& operator=(const Polling&) = delete;
   // No scan is handed out any more. Returns at once: a bus that is waiting for an answer ends when
   // it has it, or when its time is over.
-  ~Polling();
+  ~Polling();  // NOLINT(bugprone-exception-escape): an Asio timer's cancel() has no error
 
   // How long the bus that has been in a call for longest has been in it.
   [[nodiscard]] std::chrono::steady_clock::duration longest_call() const;

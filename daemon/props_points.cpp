@@ -6,8 +6,8 @@
 #include <cerrno>
 #include <charconv>
 #include <cmath>
-#include <cstring>
 #include <fstream>
+#include <system_error>
 
 namespace lostwork {
 namespace {
@@ -120,8 +120,8 @@ tl::expected<std::vector<Point>, std::string> read_points(const std::filesystem:
                                                           const GivenPair& pair) {
   std::ifstream in{file};
   if (!in || std::filesystem::is_directory(file)) {
-    return tl::unexpected{file.string() +
-                          ": cannot be read: " + std::strerror(in ? EISDIR : errno)};
+    return tl::unexpected{file.string() + ": cannot be read: " +
+                          std::generic_category().message(in ? EISDIR : errno)};
   }
   CsvReader csv{in};
   if (!csv.next()) {

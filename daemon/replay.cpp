@@ -10,13 +10,14 @@
 #include "storage/store.h"
 
 #include <array>
-#include <cstring>
+#include <cerrno>
 #include <filesystem>
 #include <fstream>
 #include <memory>
 #include <optional>
 #include <stdexcept>
 #include <string>
+#include <string_view>
 #include <system_error>
 #include <utility>
 
@@ -45,7 +46,8 @@ class WholeFile {
   explicit WholeFile(std::filesystem::path path)
       : path_{std::move(path)}, part_{path_.string() + ".part"}, out_{part_, std::ios::trunc} {
     if (!out_) {
-      throw std::runtime_error{path_.string() + ": cannot be written: " + std::strerror(errno)};
+      throw std::runtime_error{path_.string() +
+                               ": cannot be written: " + std::generic_category().message(errno)};
     }
   }
   WholeFile(const WholeFile&) = delete;
@@ -106,10 +108,19 @@ struct Sinks {
   Store* store = nullptr;
 };
 
-void store_batch(Store& store, Batch batch) {
-  const WriteResult result = store.write(std::move(batch));
+void store_batch(const Sinks& sinks, Batch batch) {
+  if (sinks.store == nullptr) {
+    return;
+  }
+  const WriteResult result = sinks.store->write(std::move(batch));
   if (!result.stored) {
     throw std::runtime_error{result.why};
+  }
+}
+
+void write_result(const Sinks& sinks, std::string_view machine, const MachineStep& step) {
+  if (sinks.results != nullptr && step.fate == ScanFate::taken) {
+    write_result_row(*sinks.results, machine, step.assessment);
   }
 }
 
@@ -126,23 +137,16 @@ void run_through(const PlantConfig& plant, CsvHistory& history, Pipeline& pipeli
   for (auto row = history.next().value(); row; row = history.next().value()) {
     for (std::size_t m = 0; m < pipeline.size(); ++m) {
       const MachineStep& step = pipeline.take(m, scan_of(*row, plant.wiring, points[m]));
-      if (sinks.results != nullptr && step.fate == ScanFate::taken) {
-        write_result_row(*sinks.results, plant.machines[m].model.id, step.assessment);
-      }
+      write_result(sinks, plant.machines[m].model.id, step);
     }
     waiting += pipeline.size();
     if (waiting >= scans_a_batch) {
-      Batch batch = pipeline.take_batch();
-      if (sinks.store != nullptr) {
-        store_batch(*sinks.store, std::move(batch));
-      }
+      store_batch(sinks, pipeline.take_batch());
       waiting = 0;
     }
     progress.step();
   }
-  if (sinks.store != nullptr) {
-    store_batch(*sinks.store, pipeline.take_batch());
-  }
+  store_batch(sinks, pipeline.take_batch());
 }
 
 int replay(const Arguments& given, const PlantConfig& plant, std::ostream& out, std::ostream& err) {

@@ -48,6 +48,7 @@ int run_command(std::span<const std::string_view> arguments, std::ostream& out, 
     tell(err, loop.plant_file->string(), plant.error());
     return 2;
   }
+  // NOLINTNEXTLINE(concurrency-mt-unsafe): before any thread, and nothing here sets the environment
   Log log{err, std::getenv("JOURNAL_STREAM") != nullptr};
   loop.on_ready = [&log](std::uint16_t port) {
     log.line(Severity::info, "lostwork " + std::string{version} +

@@ -35,8 +35,9 @@ constexpr std::array<StatusWords, 15> statuses{
 };
 
 std::string_view phrase(int status) {
-  const auto row = std::find_if(statuses.begin(), statuses.end(),
-                                [status](const StatusWords& s) { return s.status == status; });
+  const auto* const row =
+      std::find_if(statuses.begin(), statuses.end(),
+                   [status](const StatusWords& s) { return s.status == status; });
   return row == statuses.end() ? "Unknown" : row->phrase;
 }
 

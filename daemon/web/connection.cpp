@@ -167,6 +167,13 @@ Answer Connection::acknowledge(const AskAcknowledge& ask) {
   return problem(404, "There is no alarm " + shown_value(ask.alarm) + '.');
 }
 
+asio::awaitable<void> Connection::refuse() {
+  const bool written = co_await write(*refusal_, AfterAnswer::close, true);
+  if (written) {
+    co_await drain();
+  }
+}
+
 asio::awaitable<Connection::Next> Connection::answer_one() {
   Parser parser;
   parser.header_limit(static_cast<std::uint32_t>(shared_->limits.header_bytes));
@@ -175,10 +182,7 @@ asio::awaitable<Connection::Next> Connection::answer_one() {
   const bool whole = co_await read(parser);
   if (!whole) {
     if (refusal_) {
-      const bool written = co_await write(*refusal_, AfterAnswer::close, true);
-      if (written) {
-        co_await drain();
-      }
+      co_await refuse();
     }
     co_return Next::close;
   }

@@ -61,6 +61,7 @@ class Connection : public std::enable_shared_from_this<Connection> {
   boost::asio::awaitable<bool> write_text(std::shared_ptr<const std::string> text);
   boost::asio::awaitable<void> events();
   boost::asio::awaitable<void> wait_for_change(std::uint64_t told);
+  boost::asio::awaitable<void> refuse();  // with refusal_
   boost::asio::awaitable<void> drain();
   [[nodiscard]] Action decide(const Parser::value_type& message);
   [[nodiscard]] Answer acknowledge(const AskAcknowledge& ask);

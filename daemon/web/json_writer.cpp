@@ -10,6 +10,16 @@
 namespace lostwork {
 namespace {
 
+void append_by_code(std::string& to, char c) {
+  if (static_cast<unsigned char>(c) < 0x20 || c == 0x7F) {
+    std::array<char, 8> code{};
+    std::snprintf(code.data(), code.size(), "\\u%04x", static_cast<unsigned>(c));
+    to += code.data();
+  } else {
+    to += c;
+  }
+}
+
 void append_escaped(std::string& to, std::string_view plain) {
   for (const char c : plain) {
     switch (c) {
@@ -22,14 +32,7 @@ void append_escaped(std::string& to, std::string_view plain) {
       case '<': to += "\\u003c"; break;
       case '>': to += "\\u003e"; break;
       case '&': to += "\\u0026"; break;
-      default:
-        if (static_cast<unsigned char>(c) < 0x20 || c == 0x7F) {
-          std::array<char, 8> code{};
-          std::snprintf(code.data(), code.size(), "\\u%04x", static_cast<unsigned>(c));
-          to += code.data();
-        } else {
-          to += c;
-        }
+      default: append_by_code(to, c);
     }
   }
 }

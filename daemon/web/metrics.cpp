@@ -72,42 +72,49 @@ std::string_view unit_of(const QuantityInfo& q) {
   return q.name.substr(q.name.size() - std::min(length, q.name.size()));
 }
 
+void sample_each(Exposition& out, const PlantView& view, Quantity quantity,
+                 double Measured::*part) {
+  for (const MachineView& machine : view.machines) {
+    if (const auto value = current_values(machine, view.time)[quantity]) {
+      const Measured shown = at_the_edge(quantity, *value);
+      out.sample("",
+                 {
+                     {"machine", machine.id}
+      },
+                 shown.*part);
+    }
+  }
+}
+
 void quantity_families(Exposition& out, const PlantView& view, Quantity quantity) {
   const QuantityInfo& q = info(quantity);
   out.family(q.name, "gauge", unit_of(q), q.meaning);
-  const auto each = [&view, quantity, &out](auto part) {
-    for (const MachineView& machine : view.machines) {
-      if (const auto value = current_values(machine, view.time)[quantity]) {
-        out.sample("",
-                   {
-                       {"machine", machine.id}
-        },
-                   part(at_the_edge(quantity, *value)));
-      }
-    }
-  };
-  each([](const Measured& value) { return value.value; });
+  sample_each(out, view, quantity, &Measured::value);
   out.family("u_" + std::string{q.name}, "gauge", unit_of(q),
              "standard uncertainty of " + std::string{q.name});
-  each([](const Measured& value) { return value.u; });
+  sample_each(out, view, quantity, &Measured::u);
+}
+
+void sample_missing(Exposition& out, std::string_view machine, const QuantityValues& values) {
+  for (const QuantityInfo& q : quantities()) {
+    const auto& value = values[*quantity_named(q.name)];
+    if (!value) {
+      out.sample(
+          "",
+          {
+              { "machine",                  machine},
+              {"quantity",                   q.name},
+              {  "reason", name(value.error().code)}
+      },
+          1.0);
+    }
+  }
 }
 
 void missing_family(Exposition& out, const PlantView& view) {
   out.family("missing", "gauge", "", "1 for each quantity without a value");
   for (const MachineView& machine : view.machines) {
-    const QuantityValues values = current_values(machine, view.time);
-    for (const QuantityInfo& q : quantities()) {
-      const auto& value = values[*quantity_named(q.name)];
-      if (!value) {
-        out.sample("",
-                   {
-                       { "machine",               machine.id},
-                       {"quantity",                   q.name},
-                       {  "reason", name(value.error().code)}
-        },
-                   1.0);
-      }
-    }
+    sample_missing(out, machine.id, current_values(machine, view.time));
   }
 }
 

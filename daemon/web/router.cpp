@@ -47,9 +47,9 @@ bool matches(std::string_view pattern, const std::vector<std::string>& segments)
 }
 
 const Router::Route* route_of(const std::vector<std::string>& segments) {
-  const auto route = std::find_if(table.begin(), table.end(),
-                                  [&segments](const auto& r) { return matches(r.path, segments); });
-  return route == table.end() ? nullptr : &*route;
+  const auto* const route = std::find_if(
+      table.begin(), table.end(), [&segments](const auto& r) { return matches(r.path, segments); });
+  return route == table.end() ? nullptr : route;
 }
 
 const EmbeddedFile* file_of(std::string_view target) {

@@ -64,7 +64,8 @@ class WebServer {
   WebServer(boost::asio::io_context& io, const WebOptions& options, Parts parts);
   WebServer(const WebServer&) = delete;
   WebServer& operator=(const WebServer&) = delete;
-  ~WebServer();  // closes everything; the io_context need not run any more
+  // Closes everything; the io_context need not run any more.
+  ~WebServer();  // NOLINT(bugprone-exception-escape): what Asio could throw here reports no error
 
   [[nodiscard]] std::uint16_t port() const;
   void changed();  // view.revision was raised: tells the open pages

@@ -36,9 +36,9 @@ unsigned char byte(std::string_view text, std::size_t at) {
 // How many bytes the sequence at the front has; 0: none that is well formed.
 std::size_t front_length(std::string_view text) {
   const unsigned char first = byte(text, 0);
-  const auto row = std::find_if(sequences.begin(), sequences.end(), [first](const Sequence& s) {
-    return first >= s.first_low && first <= s.first_high;
-  });
+  const auto* const row = std::find_if(
+      sequences.begin(), sequences.end(),
+      [first](const Sequence& s) { return first >= s.first_low && first <= s.first_high; });
   if (row == sequences.end() || text.size() < row->length) {
     return 0;
   }
