@@ -9,6 +9,7 @@
 #include <iostream>
 #include <string>
 #include <utility>
+#include <vector>
 
 namespace lostwork {
 namespace {
@@ -29,6 +30,17 @@ Watched watched(PlantMachine machine) {
   return {.model = std::move(step), .state = std::move(state)};
 }
 
+int tell_alarms(const std::vector<AlarmEvent>& events) {
+  int count = 0;
+  for (const AlarmEvent& event : events) {
+    if (event.to == AlarmState::active_unacknowledged) {
+      ++count;
+      std::cout << "  " << event.text << '\n';
+    }
+  }
+  return count;
+}
+
 int alarms_in_a_year(std::uint64_t seed) {
   PlantOptions options;
   options.seed = seed;
@@ -42,12 +54,7 @@ int alarms_in_a_year(std::uint64_t seed) {
       MachineStep step =
           advance(all.at(m).model, std::move(all.at(m).state), plant_scan(plant, machines.at(m)));
       all.at(m).state = std::move(step.next);
-      for (const AlarmEvent& event : step.alarms) {
-        if (event.to == AlarmState::active_unacknowledged) {
-          ++count;
-          std::cout << "  " << event.text << '\n';
-        }
-      }
+      count += tell_alarms(step.alarms);
     }
   }
   return count;

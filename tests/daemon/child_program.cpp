@@ -1,14 +1,15 @@
 #include "tests/daemon/child_program.h"
 
 #include <array>
+#include <cerrno>
 #include <csignal>
-#include <cstring>
 #include <fcntl.h>
 #include <poll.h>
 #include <spawn.h>
 #include <stdexcept>
 #include <sys/syscall.h>
 #include <sys/wait.h>
+#include <system_error>
 #include <unistd.h>
 
 namespace lostwork {
@@ -24,7 +25,7 @@ bool readable(int fd, std::chrono::seconds limit) {
 ChildProgram::ChildProgram(const std::vector<std::string>& arguments) {
   std::array<int, 2> ends{};
   if (pipe2(ends.data(), O_CLOEXEC) != 0) {
-    throw std::runtime_error{std::string{"pipe: "} + std::strerror(errno)};
+    throw std::runtime_error{"pipe: " + std::generic_category().message(errno)};
   }
   std::vector<std::string> words{LOSTWORK_PROGRAM};
   words.insert(words.end(), arguments.begin(), arguments.end());
@@ -42,7 +43,7 @@ ChildProgram::ChildProgram(const std::vector<std::string>& arguments) {
   close(ends[1]);
   error_fd_ = ends[0];
   if (error != 0) {
-    throw std::runtime_error{std::string{"posix_spawn: "} + std::strerror(error)};
+    throw std::runtime_error{"posix_spawn: " + std::generic_category().message(error)};
   }
 }
 
@@ -58,7 +59,7 @@ std::string ChildProgram::wait_for_line(const std::string& text, std::chrono::se
   for (;;) {
     const auto end = unread_.find('\n');
     if (end != std::string::npos) {
-      const std::string line = unread_.substr(0, end);
+      std::string line = unread_.substr(0, end);
       unread_.erase(0, end + 1);
       if (line.find(text) != std::string::npos) {
         return line;

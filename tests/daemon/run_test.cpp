@@ -40,7 +40,7 @@ class Run : public ::testing::Test {
     plant_file_ = folder_.file("plant.toml", plant_text(server_.port()));
   }
 
-  std::size_t stored_scans() const {
+  [[nodiscard]] std::size_t stored_scans() const {
     const History history{(folder_ / "tern_quay_dairy.db").string()};
     return history.assessments("chiller-1", Instant{}, all_time).size();
   }

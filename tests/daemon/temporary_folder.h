@@ -5,7 +5,7 @@
 #include <fstream>
 #include <sstream>
 #include <stdexcept>
-#include <stdlib.h>
+#include <stdlib.h>  // NOLINT(modernize-deprecated-headers): mkdtemp is POSIX, not ISO C
 #include <string>
 #include <string_view>
 

@@ -63,7 +63,7 @@ TEST_P(SentenceOfAMachine, SaysWhatHolds) {
   EXPECT_EQ(name(said.condition), name(GetParam().condition));
 }
 
-std::vector<Case> cases() {
+std::vector<Case> cases() {  // NOLINT(readability-function-size): one table
   using M = MachineView;
   using A = std::vector<AlarmView>;
   return {

@@ -71,7 +71,7 @@ class RtuSlave {
   using Bytes = std::vector<std::uint8_t>;
 
   // False: nothing before `wait_ms` is over, or the end.
-  bool await(int wait_ms) const {
+  [[nodiscard]] bool await(int wait_ms) const {
     std::array<pollfd, 2> watched{
         {{.fd = stop_, .events = POLLIN, .revents = 0},
          {.fd = master_, .events = POLLIN, .revents = 0}}

@@ -8,7 +8,7 @@
 
 #include <array>
 #include <fstream>
-#include <signal.h>
+#include <signal.h>  // NOLINT(modernize-deprecated-headers): kill is POSIX, not ISO C
 #include <string>
 #include <string_view>
 #include <sys/stat.h>

@@ -3,7 +3,7 @@
 #include <array>
 #include <bit>
 #include <cmath>
-#include <stdlib.h>
+#include <stdlib.h>  // NOLINT(modernize-deprecated-headers): mkdtemp is POSIX, not ISO C
 #include <string_view>
 #include <utility>
 

@@ -27,7 +27,7 @@ class Checker {
   [[nodiscard]] const Faults& faults() const { return faults_; }
 
  private:
-  const json::value& resolved(std::string pointer) const {
+  [[nodiscard]] const json::value& resolved(std::string pointer) const {
     return root_.at_pointer(pointer.erase(0, 1));  // "#/components/..."
   }
 
@@ -56,7 +56,7 @@ class Checker {
       check_text(value, keyword, rule, at);
     } else if (keyword == "minimum" || keyword == "maximum") {
       check_limit(value, keyword, rule, at);
-    } else if (silent.count(keyword) == 0) {
+    } else if (!silent.contains(keyword)) {
       fault(at, "the schema has the unknown keyword " + keyword);
     }
     if (keyword == "additionalProperties" && !rules.contains("properties")) {

@@ -20,18 +20,18 @@ class ServedPlant::Implementation {
  public:
   Implementation(const WebLimits& limits, HistorySource history) {
     const WebOptions options{.listen = "127.0.0.1:0", .limits = limits};
-    server_.emplace(
+    server.emplace(
         io_, options,
         WebServer::Parts{
-            .view = view_,
+            .view = view,
             .history = history ? std::move(history) : made_up_trend,
             .acknowledge = [this](std::string_view id,
                                   std::string_view comment) { return acknowledge(id, comment); },
-            .log = [this](std::string_view line) { log_.emplace_back(line); }});
+            .log = [this](std::string_view line) { log.emplace_back(line); }});
     thread_ = std::thread{[this] { io_.run(); }};
   }
-  ~Implementation() {
-    run([this] { server_.reset(); });
+  ~Implementation() {  // NOLINT(bugprone-exception-escape): it should end the program
+    run([this] { server.reset(); });
     work_.reset();
     thread_.join();
   }
@@ -47,26 +47,26 @@ class ServedPlant::Implementation {
     return done.get();
   }
 
-  PlantView view_ = made_up_plant();
-  std::vector<std::string> acknowledged_;
-  std::vector<std::string> log_;
-  std::optional<WebServer> server_;
+  PlantView view = made_up_plant();
+  std::vector<std::string> acknowledged;
+  std::vector<std::string> log;
+  std::optional<WebServer> server;
 
  private:
   Acknowledgement acknowledge(std::string_view id, std::string_view comment) {
-    const auto alarm = std::find_if(view_.alarms.begin(), view_.alarms.end(),
+    const auto alarm = std::find_if(view.alarms.begin(), view.alarms.end(),
                                     [id](const AlarmView& a) { return a.alarm.id == id; });
-    if (alarm == view_.alarms.end()) {
+    if (alarm == view.alarms.end()) {
       return Acknowledgement::no_such_alarm;
     }
     if (alarm->alarm.state != AlarmState::active_unacknowledged) {
       return Acknowledgement::already;
     }
     alarm->alarm.state = AlarmState::active_acknowledged;
-    alarm->alarm.acknowledged = view_.time;
-    acknowledged_.push_back(std::string{id} + ": " + std::string{comment});
-    ++view_.revision;
-    server_->changed();
+    alarm->alarm.acknowledged = view.time;
+    acknowledged.push_back(std::string{id} + ": " + std::string{comment});
+    ++view.revision;
+    server->changed();
     return Acknowledgement::done;
   }
 
@@ -80,23 +80,23 @@ ServedPlant::ServedPlant(const WebLimits& limits, HistorySource history)
 ServedPlant::~ServedPlant() = default;
 
 std::uint16_t ServedPlant::port() const {
-  return implementation_->server_->port();
+  return implementation_->server->port();
 }
 
 void ServedPlant::change(const std::function<void(PlantView&)>& how) {
   implementation_->run([this, &how] {
-    how(implementation_->view_);
-    ++implementation_->view_.revision;
-    implementation_->server_->changed();
+    how(implementation_->view);
+    ++implementation_->view.revision;
+    implementation_->server->changed();
   });
 }
 
 std::vector<std::string> ServedPlant::acknowledged() {
-  return implementation_->run([this] { return implementation_->acknowledged_; });
+  return implementation_->run([this] { return implementation_->acknowledged; });
 }
 
 std::vector<std::string> ServedPlant::log() {
-  return implementation_->run([this] { return implementation_->log_; });
+  return implementation_->run([this] { return implementation_->log; });
 }
 
 }  // namespace lostwork

@@ -20,6 +20,7 @@ namespace lostwork {
 namespace {
 
 using namespace std::chrono_literals;
+using namespace std::string_literals;
 using testing::Contains;
 using testing::HasSubstr;
 using testing::Not;
@@ -173,7 +174,7 @@ INSTANTIATE_TEST_SUITE_P(
         Refused{"ForAnotherHost", "GET / HTTP/1.1\r\nHost: dairy.example\r\n\r\n", 421},
         Refused{"WithoutHostIn10", "GET / HTTP/1.0\r\n\r\n", 400},
         Refused{"OfAnotherVersion", "GET / HTTP/2.0\r\nHOST\r\n\r\n", 505},
-        Refused{"ThatIsNoHttp", "\x16\x03\x01\x02\x00\x01\r\n\r\n", 400},
+        Refused{"ThatIsNoHttp", "\x16\x03\x01\x02\x00\x01\r\n\r\n"s, 400},
         Refused{"WithASpaceInAName", "GET / HTTP/1.1\r\nHOST\r\nA b: c\r\n\r\n", 400},
         Refused{"WithALongHeader",
                 "GET / HTTP/1.1\r\nHOST\r\nX: " + std::string(20000, 'a') + "\r\n\r\n", 431},

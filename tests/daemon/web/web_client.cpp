@@ -63,7 +63,7 @@ WebReply WebClient::reply(bool to_head) {
     const std::size_t begin = std::min(line.find_first_not_of(' ', colon + 1), line.size() - 1);
     reply.fields[name] = line.substr(begin, line.size() - begin - 1);
   }
-  const bool has_body = !to_head && reply.fields.count("content-length") != 0;
+  const bool has_body = !to_head && reply.fields.contains("content-length");
   const std::size_t length = has_body ? std::stoul(reply.fields["content-length"]) : 0;
   while (come.size() < length && implementation_->read_more()) {
   }

@@ -112,7 +112,7 @@ INSTANTIATE_TEST_SUITE_P(
                 "\"2026-03-01\"", "after from="},
         BadText{"SilentForEver", "device_silent:device=weather,from=2026-03-01",
                 "without to=", "to= is needed"}),
-    [](const auto& case_) { return std::string{case_.param.name}; });
+    [](const auto& row) { return std::string{row.param.name}; });
 
 TEST(ParseFaultScript, SkipsCommentsAndBlankLines) {
   const auto faults = parse_fault_script(

@@ -2,12 +2,13 @@
 
 #include "sensors/demo_plant/tern_quay.h"
 
+#include <charconv>
 #include <cmath>
-#include <cstdlib>
 #include <fstream>
 #include <map>
 #include <sstream>
 #include <string>
+#include <system_error>
 #include <vector>
 
 #include <gtest/gtest.h>
@@ -50,7 +51,7 @@ INSTANTIATE_TEST_SUITE_P(
                     Case{"HeatPumpFull", heat_pump, heat_pump_rating, 1.0, {}},
                     Case{"HeatPumpHalf", heat_pump, heat_pump_rating, 0.5, {}},
                     Case{"HeatPumpFouled", heat_pump, heat_pump_rating, 1.0, {.fouling = 0.4}}),
-    [](const auto& case_) { return std::string{case_.param.name}; });
+    [](const auto& row) { return std::string{row.param.name}; });
 
 // The solver stops at 0.01 W of imbalance (machine.cpp); ten times that for rounding of sums.
 constexpr double close_W = 0.1;
@@ -206,7 +207,12 @@ std::vector<std::map<std::string, double>> rp1043_rows() {
     }
     auto& row = rows.emplace_back();
     for (std::size_t i = 0; i < cells.size() && i < names.size(); ++i) {
-      row[names[i]] = std::atof(cells[i].c_str());
+      double number = 0.0;
+      const std::string& cell = cells[i];
+      const auto read = std::from_chars(cell.data(), cell.data() + cell.size(), number);
+      if (read.ec == std::errc{}) {  // some columns are words
+        row[names[i]] = number;
+      }
     }
   }
   return rows;

@@ -181,7 +181,7 @@ INSTANTIATE_TEST_SUITE_P(
                     EncodeCase{"S32Negative", RawType::s32, ByteOrder::dcba, -12345678.0},
                     EncodeCase{"F32", RawType::f32, ByteOrder::badc, 0.375},
                     EncodeCase{"F32LowFirst", RawType::f32, ByteOrder::cdab, -1024.25}),
-    [](const auto& case_) { return std::string{case_.param.name}; });
+    [](const auto& row) { return std::string{row.param.name}; });
 
 TEST(Encode, AValueThatDoesNotFitIsNoValue) {
   RegisterSpec spec;

@@ -180,7 +180,7 @@ INSTANTIATE_TEST_SUITE_P(
         Write{"Registers", {0, 9, 0, 0, 0, 9, 2, 16, 0, 100, 0, 1, 2, 0, 1}},
         Write{"Mask", {0, 9, 0, 0, 0, 8, 2, 22, 0, 100, 0, 0, 0, 1}},
         Write{"ReadAndWrite", {0, 9, 0, 0, 0, 13, 2, 23, 0, 100, 0, 1, 0, 100, 0, 1, 2, 0, 1}}),
-    [](const auto& case_) { return std::string{case_.param.name}; });
+    [](const auto& row) { return std::string{row.param.name}; });
 
 TEST(DemoServer, WaitsForARequestThatComesInPieces) {
   const DemoServer server{0, image_of()};
@@ -199,7 +199,7 @@ TEST(DemoServer, AnswersTwoRequestsThatComeTogether) {
   Frame both{one.begin(), one.end()};
   both.insert(both.end(), two.begin(), two.end());
   client.send(both);
-  const Frame got = client.receive(2 * (9 + 26));
+  const Frame got = client.receive(2U * (9 + 26));
   ASSERT_EQ(got.size(), 2U * (9 + 26));
   EXPECT_EQ(got[1], 5);
   EXPECT_EQ(got[9 + 26 + 1], 6);

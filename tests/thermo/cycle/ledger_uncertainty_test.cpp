@@ -314,13 +314,13 @@ struct TableRow {
   double pair_limit_K;  // of the difference of a pair; 0: independent sensors
   double flow_limit;
   double power_limit;
-  std::array<double, 5> U_percent;  // for a difference of 8, 5, 3, 2, 1.5 K
+  std::array<double, 5> expanded_percent;  // for a difference of 8, 5, 3, 2, 1.5 K
   double last_digit;
 };
 
 class EfficiencyTable : public testing::TestWithParam<TableRow> {
  protected:
-  static double U_percent(const TableRow& row, double difference_K) {
+  static double expanded_percent(const TableRow& row, double difference_K) {
     constexpr double cold_mean_T_K = 282.65;
     Cycle cycle;
     cycle.cold_in_T_K = cold_mean_T_K + 0.5 * difference_K;
@@ -362,12 +362,13 @@ INSTANTIATE_TEST_SUITE_P(
 TEST_P(EfficiencyTable, IsReproduced) {
   constexpr std::array<double, 5> differences_K{8.0, 5.0, 3.0, 2.0, 1.5};
   for (std::size_t i = 0; i < differences_K.size(); ++i) {
-    const double expected = GetParam().U_percent.at(i);
+    const double expected = GetParam().expanded_percent.at(i);
     const double digit =
         expected < 20.0 && GetParam().last_digit > 0.5 && expected != std::floor(expected)
             ? 0.1
             : GetParam().last_digit;
-    EXPECT_NEAR(U_percent(GetParam(), differences_K.at(i)), expected, 0.5 * digit + 0.02 * expected)
+    EXPECT_NEAR(expanded_percent(GetParam(), differences_K.at(i)), expected,
+                0.5 * digit + 0.02 * expected)
         << differences_K.at(i) << " K";
   }
 }

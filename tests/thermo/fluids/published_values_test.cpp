@@ -87,14 +87,30 @@ std::optional<Point> point(const Fluid& fluid, const PublishedValue& value) {
 
 double in_printed_unit(const Fluid& fluid, const PublishedValue& value, const Point& at) {
   const Properties properties = Isotherm{fluid, at.T_K}.properties(at.rho_kgm3);
-  if (value.property == "p") return properties.p_Pa / 1e6;
-  if (value.property == "T") return at.T_K;
-  if (value.property == "rho") return at.rho_kgm3;
-  if (value.property == "h") return properties.h_Jkg / 1e3;
-  if (value.property == "s") return properties.s_JkgK / 1e3;
-  if (value.property == "cv") return properties.cv_JkgK / 1e3;
-  if (value.property == "cp") return properties.cp_JkgK / 1e3;
-  if (value.property == "w") return properties.sound_speed_w;
+  if (value.property == "p") {
+    return properties.p_Pa / 1e6;
+  }
+  if (value.property == "T") {
+    return at.T_K;
+  }
+  if (value.property == "rho") {
+    return at.rho_kgm3;
+  }
+  if (value.property == "h") {
+    return properties.h_Jkg / 1e3;
+  }
+  if (value.property == "s") {
+    return properties.s_JkgK / 1e3;
+  }
+  if (value.property == "cv") {
+    return properties.cv_JkgK / 1e3;
+  }
+  if (value.property == "cp") {
+    return properties.cp_JkgK / 1e3;
+  }
+  if (value.property == "w") {
+    return properties.sound_speed_w;
+  }
   ADD_FAILURE() << "a property that the test does not know: " << value.property;
   return std::nan("");
 }
