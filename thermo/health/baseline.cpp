@@ -104,18 +104,24 @@ std::vector<std::int64_t> blocks_of(const Samples& samples) {
   return blocks;
 }
 
+Samples outside(const Samples& samples, const std::vector<std::int64_t>& blocks,
+                std::int64_t block) {
+  Samples out;
+  for (std::size_t i = 0; i < samples.size(); ++i) {
+    if (blocks[i] != block) {
+      out.push_back(samples[i]);
+    }
+  }
+  return out;
+}
+
 // Residuals, each against a fit that has not seen its block.
 Result<std::vector<double>> left_out_residuals(Baseline b, Feature feature, const Samples& samples,
                                                Sign sign) {
   const std::vector<std::int64_t> blocks = blocks_of(samples);
   std::vector<double> residuals(samples.size(), 0.0);
   for (std::int64_t block = 0; block <= blocks.back(); ++block) {
-    Samples others;
-    for (std::size_t i = 0; i < samples.size(); ++i) {
-      if (blocks[i] != block) {
-        others.push_back(samples[i]);
-      }
-    }
+    const Samples others = outside(samples, blocks, block);
     if (others.size() == samples.size()) {
       continue;
     }
@@ -125,9 +131,8 @@ Result<std::vector<double>> left_out_residuals(Baseline b, Feature feature, cons
     }
     b.fits.at(static_cast<std::size_t>(feature)).x = found->x;
     for (std::size_t i = 0; i < samples.size(); ++i) {
-      if (blocks[i] == block) {
-        residuals[i] = residual(b, feature, *samples[i]).value_or(0.0);
-      }
+      residuals[i] =
+          blocks[i] == block ? residual(b, feature, *samples[i]).value_or(0.0) : residuals[i];
     }
   }
   return residuals;

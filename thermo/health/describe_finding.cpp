@@ -43,11 +43,12 @@ void describe_causes(Finding& finding, const Judgement& j) {
     return;
   }
   for (const RankedCause& cause : j.diagnosis.causes) {
-    if (cause.probability >= 0.02 && finding.causes.size() < 5) {
-      finding.causes.push_back(cause);
-      if (cause.role) {
-        finding.suspect_sensors.push_back(*cause.role);
-      }
+    if (cause.probability < 0.02 || finding.causes.size() >= 5) {
+      continue;
+    }
+    finding.causes.push_back(cause);
+    if (cause.role) {
+      finding.suspect_sensors.push_back(*cause.role);
     }
   }
 }

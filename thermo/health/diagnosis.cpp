@@ -45,22 +45,23 @@ struct Best {
   double log_likelihood;
 };
 
+Best better(const Best& best, const std::vector<Seen>& seen, const Trace& trace, double amount) {
+  const double l = log_likelihood(seen, trace, amount);
+  return l > best.log_likelihood ? Best{.amount = amount, .log_likelihood = l} : best;
+}
+
 // Scans amounts a tenth apart in ratio, then narrows about the best.
 Best best_amount(const std::vector<Seen>& seen, const Trace& trace) {
   Best best{.amount = 0.0, .log_likelihood = -std::numeric_limits<double>::infinity()};
-  for (double size = 0.01; size < 200.0; size *= 1.1) {
-    const double l = log_likelihood(seen, trace, size);
-    if (l > best.log_likelihood) {
-      best = {.amount = size, .log_likelihood = l};
-    }
+  double amount = 0.01;
+  while (amount < 200.0) {
+    best = better(best, seen, trace, amount);
+    amount *= 1.1;
   }
   double ratio = 1.05;
   for (int i = 0; i < 12; ++i) {
     for (const double factor : {ratio, 1.0 / ratio}) {
-      const double l = log_likelihood(seen, trace, best.amount * factor);
-      if (l > best.log_likelihood) {
-        best = {.amount = best.amount * factor, .log_likelihood = l};
-      }
+      best = better(best, seen, trace, best.amount * factor);
     }
     ratio = std::sqrt(ratio);
   }

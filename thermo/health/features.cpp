@@ -175,25 +175,36 @@ void put(FeatureValues& features, Feature feature, std::optional<double> value) 
   features.at(static_cast<std::size_t>(feature)) = value;
 }
 
-void add_temperatures(const Fluid& fluid, const Inputs& in, FeatureValues& out) {
-  if (const auto p = in[Input::suction_pressure]) {
-    if (const auto dew = state(fluid, GivenPx{.p_Pa = *p, .quality = 1.0})) {
-      put(out, Feature::cold_approach, sum(in[Input::cold_out], dew->T_K, -1.0));
-      put(out, Feature::superheat, sum(in[Input::suction_temperature], dew->T_K, -1.0));
-    }
+void add_suction_temperatures(const Fluid& fluid, double p_Pa, const Inputs& in,
+                              FeatureValues& out) {
+  if (const auto dew = state(fluid, GivenPx{.p_Pa = p_Pa, .quality = 1.0})) {
+    put(out, Feature::cold_approach, sum(in[Input::cold_out], dew->T_K, -1.0));
+    put(out, Feature::superheat, sum(in[Input::suction_temperature], dew->T_K, -1.0));
   }
-  if (const auto p = in[Input::discharge_pressure]) {
-    const auto dew = state(fluid, GivenPx{.p_Pa = *p, .quality = 1.0});
-    const auto bubble = state(fluid, GivenPx{.p_Pa = *p, .quality = 0.0});
-    if (dew && bubble) {
-      put(out, Feature::hot_approach, sum(dew->T_K, in[Input::hot_out], -1.0));
-      const auto subcooling_K = sum(bubble->T_K, in[Input::liquid_temperature], -1.0);
-      put(out, Feature::subcooling, subcooling_K);
-      const auto drive_K = sum(dew->T_K, in[Input::hot_in], -1.0);
-      if (subcooling_K && drive_K && *drive_K > 1.0) {
-        put(out, Feature::subcooling_share, *subcooling_K / *drive_K);
-      }
-    }
+}
+
+void add_discharge_temperatures(const Fluid& fluid, double p_Pa, const Inputs& in,
+                                FeatureValues& out) {
+  const auto dew = state(fluid, GivenPx{.p_Pa = p_Pa, .quality = 1.0});
+  const auto bubble = state(fluid, GivenPx{.p_Pa = p_Pa, .quality = 0.0});
+  if (!dew || !bubble) {
+    return;
+  }
+  put(out, Feature::hot_approach, sum(dew->T_K, in[Input::hot_out], -1.0));
+  const auto subcooling_K = sum(bubble->T_K, in[Input::liquid_temperature], -1.0);
+  put(out, Feature::subcooling, subcooling_K);
+  const auto drive_K = sum(dew->T_K, in[Input::hot_in], -1.0);
+  if (subcooling_K && drive_K && *drive_K > 1.0) {
+    put(out, Feature::subcooling_share, *subcooling_K / *drive_K);
+  }
+}
+
+void add_temperatures(const Fluid& fluid, const Inputs& in, FeatureValues& out) {
+  if (const auto p_Pa = in[Input::suction_pressure]) {
+    add_suction_temperatures(fluid, *p_Pa, in, out);
+  }
+  if (const auto p_Pa = in[Input::discharge_pressure]) {
+    add_discharge_temperatures(fluid, *p_Pa, in, out);
   }
 }
 

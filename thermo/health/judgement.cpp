@@ -58,16 +58,21 @@ bool large_enough(const RankedCause& cause, const Inputs& inputs, bool power_mov
   return false;
 }
 
+// A mean that grows by one value, where there is one.
+void take_into(std::optional<double>& mean, double& count, const std::optional<double>& value) {
+  if (value) {
+    count += 1.0;
+    const double before = mean.value_or(0.0);
+    mean = before + (*value - before) / count;
+  }
+}
+
 Inputs mean_of(const std::vector<Inputs>& all) {
   Inputs out;
   std::array<double, input_count> count{};
   for (const Inputs& inputs : all) {
     for (std::size_t i = 0; i < input_count; ++i) {
-      if (const auto& value = inputs.values.at(i)) {
-        count.at(i) += 1.0;
-        const double before = out.values.at(i).value_or(0.0);
-        out.values.at(i) = before + (*value - before) / count.at(i);
-      }
+      take_into(out.values.at(i), count.at(i), inputs.values.at(i));
     }
     out.cold_cp_JkgK += inputs.cold_cp_JkgK / static_cast<double>(all.size());
     out.hot_cp_JkgK += inputs.hot_cp_JkgK / static_cast<double>(all.size());

@@ -152,7 +152,7 @@ Result<Vector> solve_not_negative(const Matrix& a, const Vector& b) {
 
 Result<Vector> solve(const Matrix& a, const Vector& b, Sign sign) {
   const Scaled s = scaled(a);
-  const Result<Vector> y =
+  Result<Vector> y =
       sign == Sign::any ? Result<Vector>{solve_any(s.a, b)} : solve_not_negative(s.a, b);
   if (!y) {
     return y;

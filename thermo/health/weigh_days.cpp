@@ -46,18 +46,27 @@ std::vector<const DayRecord*> last_days(const HealthState& state, std::int64_t f
   return days;
 }
 
+struct Total {
+  double sum = 0.0;
+  double count = 0.0;
+};
+
+Total total_of(const std::vector<const DayRecord*>& days, Feature feature) {
+  Total out;
+  for (const DayRecord* day : days) {
+    if (const auto& residual = (*day)[feature]) {
+      out.sum += *residual;
+      out.count += 1.0;
+    }
+  }
+  return out;
+}
+
 Shift shift_of(const Baseline& baseline, const std::vector<const DayRecord*>& days) {
   Shift shift{};
   for (std::size_t i = 0; i < feature_count; ++i) {
     const auto feature = static_cast<Feature>(i);
-    double sum = 0.0;
-    double count = 0.0;
-    for (const DayRecord* day : days) {
-      if (const auto& r = (*day)[feature]) {
-        sum += *r;
-        count += 1.0;
-      }
-    }
+    const auto [sum, count] = total_of(days, feature);
     if (count > 0.0) {
       const double u = day_u(baseline, feature);
       const double least = i == 0 ? baseline[feature].day_sigma : info(feature).min_sigma;

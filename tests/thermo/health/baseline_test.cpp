@@ -122,6 +122,16 @@ TEST(CoverageFactor, IsStudents) {
   EXPECT_NEAR(coverage_factor(baseline), 2.0003, 1e-4);
 }
 
+QuantityValues means_of(const Window& window) {
+  QuantityValues values;
+  for (std::size_t i = 0; i < quantity_count; ++i) {
+    if (const auto& v = window.values.at(i)) {
+      values[static_cast<Quantity>(i)] = Measured{.value = v->mean_SI, .u = v->u_SI};
+    }
+  }
+  return values;
+}
+
 // The 95 % prediction interval on windows that the baseline has not seen. One baseline in ten may
 // hold fewer than it promises, for its own scatter is an estimate: 0.90 allows for that.
 class Prediction : public ::testing::TestWithParam<std::uint64_t> {};
@@ -134,13 +144,7 @@ TEST_P(Prediction, HoldsTheWindowsToCome) {
   double held = 0.0;
   for (const Window& window : windows) {
     if (state.baseline) {
-      QuantityValues values;
-      for (std::size_t i = 0; i < quantity_count; ++i) {
-        if (const auto& v = window.values.at(i)) {
-          values[static_cast<Quantity>(i)] = Measured{.value = v->mean_SI, .u = v->u_SI};
-        }
-      }
-      if (const auto should = expected_power(state, values)) {
+      if (const auto should = expected_power(state, means_of(window))) {
         inside_guard += 1.0;
         const double off_W = window[Quantity::power]->mean_SI - should->power_W.value;
         held += std::abs(off_W) <= should->half_width_W ? 1.0 : 0.0;

@@ -201,10 +201,10 @@ std::vector<Weather> weather_of(const SyntheticOptions& options, SeededNormal& n
     const double year = options.first_day_of_year + options.season * day;
     const double summer = -std::cos(turn * (year - 20.0) / 365.0);
     const double noon = -std::cos(turn * (day - std::floor(day)));
-    const double hot_in_C = 19.0 + 6.0 * summer + 2.0 * noon + 1.8 * front;
+    const double hot_in_degC = 19.0 + 6.0 * summer + 2.0 * noon + 1.8 * front;
     const double load = 0.55 + 0.10 * summer + 0.15 * noon + 0.08 * trade + 0.03 * noise();
     all.push_back({.load_W = full_load_W * std::clamp(load, 0.25, 1.0),
-                   .hot_in_T_K = 273.15 + std::max(hot_in_C, 12.0)});
+                   .hot_in_T_K = 273.15 + std::max(hot_in_degC, 12.0)});
   }
   return all;
 }
