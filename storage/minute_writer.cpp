@@ -76,7 +76,7 @@ void MinuteWriter::take_in_hand(std::int64_t number, Machine& machine, Instant m
     machine.hand = found(number, minute_begin);
   }
   if (!machine.hand) {
-    machine.hand.emplace().block.push_back({.begin = minute_begin, .sums = {}});
+    machine.hand = Hand{.block = {Period{.begin = minute_begin, .sums = {}}}};
   }
   machine.newest = std::max(machine.newest.value_or(minute_begin), minute_begin);
 }
