@@ -2,12 +2,12 @@
 
 #include <fstream>
 #include <map>
-#include <regex>
 #include <set>
 #include <sstream>
 #include <string>
 #include <utility>
 
+#include <boost/json.hpp>
 #include <gtest/gtest.h>
 
 namespace lostwork {
@@ -33,12 +33,12 @@ Drawn published() {
   std::ifstream file{LOSTWORK_SOURCE "/tests/reference/alarm_management.json"};
   std::stringstream text;
   text << file.rdbuf();
-  const std::string all = text.str();
-  const std::regex triple{R"re(\[\s*"([A-F])",\s*"([a-z -]+)",\s*"([A-F])"\s*\])re"};
+  const boost::json::value all = boost::json::parse(text.str());
   Drawn out;
-  for (std::sregex_iterator at{all.begin(), all.end(), triple}, end; at != end; ++at) {
-    if (states.contains((*at)[1]) && states.contains((*at)[3])) {
-      out[{states.at((*at)[1]), stimuli.at((*at)[2])}] = states.at((*at)[3]);
+  for (const auto& arrow : all.at("transitions_core").as_array()) {
+    const auto word = [&arrow](std::size_t i) { return std::string{arrow.at(i).as_string()}; };
+    if (states.contains(word(0)) && states.contains(word(2))) {
+      out[{states.at(word(0)), stimuli.at(word(1))}] = states.at(word(2));
     }
   }
   return out;

@@ -1,6 +1,6 @@
 // Checks JSON against the part of JSON Schema that openapi.json uses: type, enum, properties,
 // required, additionalProperties, items, oneOf, $ref, pattern, minimum, maximum, maxLength.
-// A keyword that is not known is an error, so that none is passed over in silence.
+// A keyword or a pattern that is not known is an error, so that none is passed over in silence.
 #pragma once
 
 #include <string>
