@@ -25,12 +25,18 @@ using testing::Contains;
 using testing::HasSubstr;
 using testing::Not;
 
-// Deadlines that a test can wait for; a sanitizer build on a busy machine still keeps them.
+// Deadlines that a test can wait for: for clients that are to miss them.
 WebLimits short_times() {
   WebLimits limits;
   limits.request_time = 300ms;
   limits.idle_time = 300ms;
-  limits.write_time = 300ms;
+  return limits;
+}
+
+// Events that a test need not wait for, and the usual deadlines: a client on a busy machine keeps
+// them.
+WebLimits quick_events() {
+  WebLimits limits;
   limits.event_period = 1ms;
   limits.heartbeat = 100ms;
   return limits;
@@ -273,7 +279,7 @@ TEST(ManyClients, MakeRoomWhenTheyGo) {
 }
 
 TEST(EventStream, TellsAChangeAtOnce) {
-  ServedPlant plant{short_times()};
+  ServedPlant plant{quick_events()};
   WebClient client{plant.port()};
   client.send(get_request(plant.port(), "/api/v1/events"));
   EXPECT_TRUE(client.wait_for("Chiller 1 needs 6 % more power"));
@@ -282,14 +288,14 @@ TEST(EventStream, TellsAChangeAtOnce) {
 }
 
 TEST(EventStream, IsNeverSilentForLong) {
-  const ServedPlant plant{short_times()};
+  const ServedPlant plant{quick_events()};
   WebClient client{plant.port()};
   client.send(get_request(plant.port(), "/api/v1/events"));
   EXPECT_TRUE(client.wait_for("event: alive\ndata: {}\n\n"));
 }
 
 TEST(EventStream, BeyondTheLimitIsAskedToComeBack) {
-  WebLimits limits = short_times();
+  WebLimits limits = quick_events();
   limits.event_streams = 1;
   const ServedPlant plant{limits};
   WebClient first{plant.port()};
@@ -303,7 +309,8 @@ TEST(EventStream, BeyondTheLimitIsAskedToComeBack) {
 // The client never reads: the buffers of both ends fill up, then it is dropped. A new one gets its
 // place.
 TEST(EventStream, ThatIsNeverReadIsDropped) {
-  WebLimits limits = short_times();
+  WebLimits limits = quick_events();
+  limits.write_time = 300ms;
   limits.event_streams = 1;
   ServedPlant plant{limits};
   plant.change([](PlantView& view) { view.machines.front().name = std::string(60000, 'a'); });
@@ -359,7 +366,7 @@ TEST(TrendOnTheWire, WaitsOnlyBehindSoMany) {
     others.push_back(std::make_unique<WebClient>(plant.port()));
     others.back()->send(get_request(plant.port(), trend_target));
     auto third = std::async(std::launch::async, [&others] { return others.back()->reply(); });
-    if (third.wait_for(2s) != std::future_status::ready) {
+    if (third.wait_for(60s) != std::future_status::ready) {
       go.set_value();
       FAIL() << "a third question waits";
     }
@@ -385,7 +392,7 @@ TEST(TrendOnTheWire, DoesNotHoldUpOtherAnswers) {
 }
 
 TEST(WebServerEnd, ClosesWhatIsOpen) {
-  auto plant = std::make_unique<ServedPlant>(short_times());
+  auto plant = std::make_unique<ServedPlant>(quick_events());
   WebClient stream{plant->port()};
   stream.send(get_request(plant->port(), "/api/v1/events"));
   EXPECT_TRUE(stream.wait_for("event: change"));
