@@ -99,16 +99,16 @@ std::ostream& operator<<(std::ostream& out, const Bias& b) {
 class BiasOfASensor : public ::testing::TestWithParam<Bias> {};
 
 TEST_P(BiasOfASensor, IsFoundAndTheSensorNamed) {
-  const auto [name, input, bias] = GetParam();
-  SyntheticOptions options = faulty([&](double day) {
+  const Bias bias = GetParam();
+  SyntheticOptions options = faulty([&bias](double day) {
     Ills ills;
-    ills.bias.at(static_cast<std::size_t>(input)) = bias * grown(day);
+    ills.bias.at(static_cast<std::size_t>(bias.input)) = bias.bias * grown(day);
     return ills;
   });
   options.days += 16.0;
   const Played all = played(synthetic_history(options));
   ASSERT_TRUE(all.confirmed(FindingKind::sensor_suspect));
-  EXPECT_EQ(all.last(FindingKind::sensor_suspect)->suspect_sensors.at(0), role_of(input));
+  EXPECT_EQ(all.last(FindingKind::sensor_suspect)->suspect_sensors.at(0), role_of(bias.input));
   EXPECT_FALSE(all.confirmed(FindingKind::efficiency_drift));
 }
 

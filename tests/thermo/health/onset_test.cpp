@@ -21,7 +21,8 @@ std::vector<DayValue> days_of(std::uint64_t seed, double onset, double length, d
   std::vector<DayValue> days;
   for (std::int64_t day = 0; day < count; ++day) {
     const double since = static_cast<double>(day) + 0.5 - onset;
-    const double share = length > 0.0 ? std::clamp(since / length, 0.0, 1.0) : since > 0.0;
+    const double step = since > 0.0 ? 1.0 : 0.0;
+    const double share = length > 0.0 ? std::clamp(since / length, 0.0, 1.0) : step;
     days.push_back({.day = day, .residual = size * share + scatter * noise(), .u = scatter});
   }
   return days;
