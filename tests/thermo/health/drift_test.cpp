@@ -14,7 +14,6 @@
 namespace lostwork {
 namespace {
 
-using testing::health_model;
 using testing::Ills;
 using testing::played;
 using testing::Played;
