@@ -13,7 +13,6 @@ namespace {
 
 using testing::health_model;
 using testing::synthetic_history;
-using testing::synthetic_model;
 
 // A machine that obeys the entropy form to the last bit, so that the fit has a right answer.
 double power_by_the_form_W(const Conditions& c) {
