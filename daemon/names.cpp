@@ -122,7 +122,7 @@ std::string_view name(Duty duty) {
 
 std::string text(const Reason& reason, const MachineView& machine) {
   std::string words{text(reason.code)};
-  if (reason.blame.empty()) {
+  if (reason.blame.empty() || reason.code == ReasonCode::no_baseline) {
     return words;
   }
   const auto role = role_named(reason.blame);

@@ -48,6 +48,7 @@ struct MachineView {
   std::string cold_fluid = "water";  // for names: "cold water leaving"
   std::string hot_fluid = "water";
   double rated_power_W = 0.0;
+  bool casing_surroundings_known = false;  // the plant file says how warm it is around the casing
   Span scan_period{10000};
   // The last scan that any reading of the machine was good in; none: not read since the start.
   std::optional<Instant> last_read;

@@ -31,6 +31,7 @@ MachineView machine_view(const PlantConfig& plant, const StepModel& model) {
   out.duty = machine.duty;
   out.refrigerant = machine.refrigerant->name;
   out.rated_power_W = machine.rated_power_W;
+  out.casing_surroundings_known = machine.casing_T_K.has_value();
   out.scan_period = machine.scan_period;
   for (const std::size_t i : points_of(plant.wiring, machine.id)) {
     out.points.push_back(point_view(plant.wiring.points[i], plant.wiring.altitude_m));

@@ -88,7 +88,8 @@ void ledger_row(JsonWriter& json, const LedgerRow& row, const MachineView& machi
   json.begin_object();
   json.member("quantity", info(row.quantity).name)
       .member("part", name(row.part))
-      .member("text", row.text);
+      .member("text", row.text)
+      .member("note", row.note);
   json.key("power_kW");
   quantity_value(json, row.quantity, row.power_W, machine);
   constexpr double percent = 100.0;
@@ -98,7 +99,7 @@ void ledger_row(JsonWriter& json, const LedgerRow& row, const MachineView& machi
 }
 
 void ledger_member(JsonWriter& json, const QuantityValues& values, const MachineView& machine) {
-  const LedgerTable table = ledger_table(values);
+  const LedgerTable table = ledger_table(values, machine.casing_surroundings_known);
   json.key("ledger").begin_object();
   json.member("split", table.split).member("complete", table.complete).key("input");
   quantity_value(json, Quantity::power, table.input_W, machine);

@@ -40,6 +40,21 @@ std::optional<Measured> share_of(const RowKind& kind, const QuantityValues& valu
                   .u = part->u / input->value + std::abs(share) * input->u / input->value};
 }
 
+std::string_view note_on(Quantity quantity, const QuantityValues& values,
+                         bool casing_surroundings_known) {
+  if (!values[quantity]) {
+    return {};
+  }
+  if (quantity == Quantity::casing && !casing_surroundings_known) {
+    return "Counts as nothing: the plant file does not say how warm it is around the casing.";
+  }
+  const Result<Measured>& heats = values[Quantity::energy_residual];
+  if (quantity == Quantity::unaccounted && !heats && heats.error().code == ReasonCode::no_sensor) {
+    return "Cannot be told without the second flow meter; with one it is always 0.";
+  }
+  return {};
+}
+
 std::vector<RowKind> parts_of(const QuantityValues& values) {
   const Result<Measured>& lines = values[Quantity::lost_lines];
   if (lines || lines.error().code != ReasonCode::no_sensor) {
@@ -76,14 +91,15 @@ std::string_view name(LedgerPart part) {
   return "";
 }
 
-LedgerTable ledger_table(const QuantityValues& values) {
+LedgerTable ledger_table(const QuantityValues& values, bool casing_surroundings_known) {
   LedgerTable table{.rows = {}, .input_W = values[Quantity::power]};
-  const auto add = [&table, &values](const RowKind& kind) {
+  const auto add = [&table, &values, casing_surroundings_known](const RowKind& kind) {
     table.rows.push_back({.quantity = kind.quantity,
                           .part = kind.part,
                           .text = kind.text,
                           .power_W = values[kind.quantity],
-                          .share = share_of(kind, values)});
+                          .share = share_of(kind, values),
+                          .note = note_on(kind.quantity, values, casing_surroundings_known)});
   };
   add({Quantity::reversible_power, LedgerPart::needed, "least power for this work"});
   const std::vector<RowKind> parts = parts_of(values);
@@ -95,7 +111,7 @@ LedgerTable ledger_table(const QuantityValues& values) {
   } else {
     add({Quantity::lost_total, LedgerPart::lost, "lost in the machine"});
   }
-  add({Quantity::casing, LedgerPart::casing, "heat through the casing"});
+  add({Quantity::casing, LedgerPart::casing, "work value of the casing heat"});
   add({Quantity::unaccounted, LedgerPart::unaccounted, "not accounted for"});
   table.complete = adds_up(table);
   return table;

@@ -12,7 +12,7 @@ namespace lostwork {
 enum class LedgerPart : std::uint8_t {
   needed,       // the reversible power: no machine can do with less
   lost,         // destroyed within the machine
-  casing,       // heat that leaves through the casing
+  casing,       // work value of the heat that leaves through the casing
   unaccounted,  // what the sensors disagree about
 };
 [[nodiscard]] std::string_view name(LedgerPart part);
@@ -25,6 +25,7 @@ struct LedgerRow {
   // Of the input power, 0..1. Its u is that of the efficiency for the needed part; elsewhere the
   // sum of the two parts' shares of it, which no correlation can exceed (JCGM 100:2008, 5.2.2).
   std::optional<Measured> share;
+  std::string_view note = {};  // what must be known to read the figure: a sentence; mostly empty
 };
 
 struct LedgerTable {
@@ -36,7 +37,8 @@ struct LedgerTable {
 
 // The components' rows where all of them have a value, else one row for the lost work together.
 // Without a sensor at the evaporator's outlet the lines are part of the evaporator (ledger.h), and
-// have no row.
-[[nodiscard]] LedgerTable ledger_table(const QuantityValues& values);
+// have no row. Without the temperature around the casing its heat counts as nothing (ledger.h).
+[[nodiscard]] LedgerTable ledger_table(const QuantityValues& values,
+                                       bool casing_surroundings_known);
 
 }  // namespace lostwork

@@ -102,6 +102,47 @@ TEST_F(Page, HasLedgerSharesThatAddUpToAHundredPerCent) {
   EXPECT_NEAR(sum, 100.0, 1e-7);
 }
 
+TEST_F(Page, ShowsAnExactZeroAsZero) {
+  plant->change([](PlantView& view) {
+    QuantityValues& values = view.machines.at(1).latest.values;
+    values[Quantity::casing] = Measured{.value = 0.0, .u = 0.0};
+    values[Quantity::unaccounted] = Measured{.value = 3e-12, .u = 1e-12};
+  });
+  for (const std::string quantity : {"casing_kW", "unaccounted_kW"}) {
+    const std::string cell =
+        "#machine-heat-pump-1 [data-quantity=" + quantity + "] td:nth-child(2) data";
+    EXPECT_TRUE(
+        browser->comes_true("document.querySelector('" + cell + "').innerText.trim() === '0'"))
+        << text(cell);
+  }
+}
+
+TEST_F(Page, SaysWhatIsLearnedInOnePiece) {
+  EXPECT_THAT(text("#machine-chiller-1 .compare + .note"), testing::StrEq("Learned."));
+}
+
+// The made-up trend: 56.0 kW and 12 % more than expected, u 1.2 % and 1.12 %; so 56 / 1.12 = 50.0
+// was expected, with 2 * 50 * 0.0112 / 1.12 = 1.0 as half width.
+TEST_F(Page, ComparesThePowerOfTheSameHours) {
+  const std::string box = "#machine-chiller-1 .chart-box:has([aria-label^=\"measured\"])";
+  browser->run("document.querySelector('" + box + "').scrollIntoView();");
+  EXPECT_TRUE(browser->comes_true("document.querySelector('" + box + " canvas') !== null"));
+  browser->run("document.querySelector('" + box + " details').open = true;");
+  EXPECT_TRUE(browser->comes_true("document.querySelectorAll('" + box + " tbody tr').length > 40"));
+  EXPECT_THAT(text(box + " tbody tr td:nth-child(2)"), testing::StrEq("56.0 \u00b1 1.3 kW"));
+  EXPECT_THAT(text(box + " tbody tr td:nth-child(3)"), testing::StrEq("50.0 \u00b1 1.0 kW"));
+}
+
+TEST_F(Page, LeavesAGapWhereNothingCanBeCompared) {
+  const std::string box = "#machine-chiller-1 .chart-box:has([aria-label^=\"measured\"])";
+  browser->run("document.querySelector('" + box + "').scrollIntoView();");
+  EXPECT_TRUE(browser->comes_true("document.querySelector('" + box + " canvas') !== null"));
+  browser->run("document.querySelector('" + box + " details').open = true;");
+  EXPECT_TRUE(browser->comes_true("[...document.querySelectorAll('" + box +
+                                  " tbody tr')].some((row) => row.cells[1].innerText !== 'none' "
+                                  "&& row.cells[2].innerText === 'none')"));
+}
+
 TEST_F(Page, TellsWhyTheLossIsNotSplit) {
   EXPECT_THAT(text("#machine-heat-pump-1 .ledger + .note"),
               HasSubstr("it takes pressures and temperatures of the refrigerant"));
@@ -197,9 +238,24 @@ TEST_F(Page, ShowsWhereTheFocusIs) {
 
 TEST_F(Page, FitsAPhoneWithoutScrollingSideways) {
   browser->screen(360, 780, true);
+  plant->change([](PlantView& view) {
+    PointView point = view.machines.at(0).points.front();
+    point.id = "ch1_evaporator_outlet_temperature";
+    point.unit = "kPa_abs";
+    point.name = "refrigerant leaving the evaporator";
+    view.machines.at(0).points.push_back(point);
+    point.reading.quality = Quality::out_of_range;
+    view.machines.at(0).points.push_back(point);
+  });
+  EXPECT_TRUE(
+      browser->comes_true("document.querySelectorAll('#sensors-chiller-1 tbody tr').length === 7"));
   browser->run("document.querySelectorAll('details').forEach((d) => { d.open = true; });");
   EXPECT_TRUE(browser->comes_true("document.querySelectorAll('canvas').length > 0"));
   EXPECT_LE(number("document.documentElement.scrollWidth"), 360.0);
+  EXPECT_LE(number("Math.max(...[...document.querySelectorAll('table')]"
+                   ".filter((t) => !t.closest('.scroll'))"
+                   ".map((t) => t.getBoundingClientRect().right))"),
+            360.0);
 }
 
 // Success criterion 1.4.3 of WCAG 2.1: 4.5 to 1, 3 to 1 for large text; over every text shown.

@@ -27,23 +27,44 @@ async function trend(machine, quantity, from, to, points) {
   return reply.json();
 }
 
-// Rows of [time, [value, u], ...] for all times that any of the trends has.
-function rowsOf(trends, factor) {
+const none = [null, null];
+
+// A share as per cent.
+export function percentOf([value, u]) {
+  return value === null ? none : [100 * value, 100 * u];
+}
+
+// Like for like: the residual is of those scans of an hour that could be compared, and applied to
+// the mean of the whole hour, so that both lines speak of the same hours. The uncertainty is the
+// residual's, for the measured power is the same in both.
+export function expectedPower([power], [residual, u]) {
+  if (power === null || residual === null || residual <= -100) {
+    return none;
+  }
+  const ratio = 1 + residual / 100;
+  return [power / ratio, ((power / ratio) * (u / 100)) / ratio];
+}
+
+// Rows of [time, [value, u], ...] for all times that any of the trends has; `columns` makes what is
+// drawn of what was asked for.
+function rowsOf(trends, columns) {
   const rows = new Map();
-  trends.forEach((one, column) => one.times.forEach((time, i) => {
+  trends.forEach((one, asked) => one.times.forEach((time, i) => {
     if (!rows.has(time)) {
-      rows.set(time, [new Date(time), ...trends.map(() => [null, null])]);
+      rows.set(time, trends.map(() => none));
     }
     if (one.values[i] !== null) {
-      rows.get(time)[column + 1] = [factor * one.values[i], factor * one.u[i]];
+      rows.get(time)[asked] = [one.values[i], one.u[i]];
     }
   }));
-  return [...rows.values()].sort((a, b) => a[0] - b[0]);
+  return [...rows].map(([time, pairs]) => [new Date(time), ...columns(...pairs)])
+    .sort((a, b) => a[0] - b[0]);
 }
 
 // One chart with its title, its reading under the pointer, and the same figures as a table.
 export class Chart {
-  // what: { quantities: [name], labels: [text], unit, factor, decimals }
+  // what: { quantities: [name], columns: (...[value, u]) => [[value, u]], labels: [text], unit,
+  // decimals }
   constructor(machine, spanName, what) {
     this.machine = machine;
     this.span = spans[spanName];
@@ -71,7 +92,7 @@ export class Chart {
     try {
       const trends = await Promise.all(this.what.quantities.map(
         (quantity) => trend(this.machine, quantity, from, now, this.span.points)));
-      this.rows = rowsOf(trends, this.what.factor);
+      this.rows = rowsOf(trends, this.what.columns);
       this.draw([from, now]);
     } catch (error) {
       this.empty(error.message);
@@ -110,7 +131,7 @@ export class Chart {
       dateWindow: window,
       errorBars: true,
       sigma: 2,
-      fillAlpha: 0.2,
+      fillAlpha: 0.28,
       colors: [color("--needed"), color("--lost")],
       strokeWidth: 1.8,
       series: Object.fromEntries(this.what.labels.map((label, i) =>

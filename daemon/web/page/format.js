@@ -34,15 +34,23 @@ export function figureText(figures, unit) {
   return number(figures.value, figures.decimals) + (half ? " " + half : "") + tail;
 }
 
+// What shows as nothing but noughts, interval and all, is a plain 0.
+export function plainZero(content) {
+  const least = 0.5e-6;  // half of the last digit that is ever shown
+  return Math.abs(content.value) < least && 2 * content.u < least
+    ? { ...content, u: 0, decimals: 0 } : content;
+}
+
 // A <data> element with the exact value, or the reason why there is none.
 export function figure(content, unit = "") {
   if (content === null || content.reason) {
     return el("span", { class: "missing" }, content?.reason.text ?? "unknown");
   }
   const tail = unitText(unit) ? "\u00a0" + unitText(unit) : "";
+  const shown = plainZero(content);
   return el("data", { value: content.value },
-    number(content.value, content.decimals),
-    el("span", { class: "interval" }, "\u00a0" + interval(content)), tail);
+    number(shown.value, shown.decimals),
+    el("span", { class: "interval" }, "\u00a0" + interval(shown)), tail);
 }
 
 // A ratio as per cent.

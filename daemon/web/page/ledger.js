@@ -1,7 +1,7 @@
 // Where the power goes: a table whose bars are a stair from nothing to the input.
 
 import { el, refresh, svg } from "./dom.js";
-import { figure, number } from "./format.js";
+import { figure, number, plainZero } from "./format.js";
 
 const bars = {
   needed: "bar-needed", lost: "bar-lost", casing: "bar-casing", unaccounted: "bar-unaccounted",
@@ -40,14 +40,16 @@ function bar(kind, step, scale) {
 
 // The most decimals that any figure of a column has: shorter ones are filled up with blanks.
 function most(figures) {
-  return Math.max(0, ...figures.filter((f) => f && f.decimals !== undefined).map((f) => f.decimals));
+  return Math.max(0, ...figures.filter((f) => f && f.decimals !== undefined)
+    .map((f) => plainZero(f).decimals));
 }
 
 // A figure whose decimal point stands under the one above it.
 function aligned(content, decimals) {
   const node = figure(content);
   if (node.localName === "data") {
-    const missing = decimals - content.decimals + (content.decimals === 0 && decimals > 0 ? 1 : 0);
+    const own = plainZero(content).decimals;
+    const missing = decimals - own + (own === 0 && decimals > 0 ? 1 : 0);
     node.firstChild.after("\u2007".repeat(missing));
   }
   return node;
@@ -57,7 +59,8 @@ function tableRow(row, step, scale, decimals) {
   const power = row.power_kW;
   return el("tr", { "data-quantity": row.quantity, "data-part": row.part },
     el("th", { scope: "row" },
-      el("span", { class: "name" }, row.text), power.reason ? null : bar(bars[row.part], step, scale)),
+      el("span", { class: "name" }, row.text), power.reason ? null : bar(bars[row.part], step, scale),
+      row.note ? el("span", { class: "remark" }, row.note) : null),
     el("td", { class: "figure" }, aligned(power, decimals.power)),
     el("td", { class: "figure" }, row.percent ? aligned(row.percent, decimals.percent) : ""));
 }
@@ -114,7 +117,7 @@ export function showLedger(place, ledger) {
   refresh(place, ledger, () => [
     el("p", {}, headline(ledger)),
     el("ul", { class: "keys" }, key("needed", "needed"), key("lost", "lost in the machine"),
-      key("casing", "through the casing"), key("unaccounted", "sensors disagree")),
+      key("casing", "casing heat"), key("unaccounted", "sensors disagree")),
     table(ledger),
     el("p", { class: "note" }, closing(ledger)),
   ]);

@@ -1,6 +1,6 @@
 // The section of one machine.
 
-import { Chart } from "./charts.js";
+import { Chart, expectedPower, percentOf } from "./charts.js";
 import { el, refresh, setText } from "./dom.js";
 import { asPercent, dayAndTime, figure, interval, number } from "./format.js";
 import { showLedger } from "./ledger.js";
@@ -35,6 +35,11 @@ function facts(machine, assessment) {
   return items.map(([strong, rest]) => el("li", {}, el("b", {}, strong), rest));
 }
 
+// "Learned, in a narrow range of load or weather."
+function learningText({ learned, text }) {
+  return learned ? text[0].toUpperCase() + text.slice(1) + "." : `Still learning: ${text}.`;
+}
+
 // Expected against measured power, in words and figures.
 function compare(machine, values) {
   const { power_kW: power, power_expected_kW: expected, power_residual_percent: more } = values;
@@ -44,8 +49,7 @@ function compare(machine, values) {
     el("table", { class: "compare" }, el("tbody", {}, row("Measured", power, "kW"),
       row("Expected when well", expected, "kW"), row("More than expected", more, "%"))),
     machine.learning.text
-      ? el("p", { class: "note" }, (machine.learning.learned ? "Learned from " : "Still learning: ") +
-        machine.learning.text + ".")
+      ? el("p", { class: "note" }, learningText(machine.learning))
       : null,
   ].filter((node) => node !== null);
 }
@@ -116,12 +120,13 @@ function allFigures(assessment, quantities) {
 
 const charts = {
   efficiency: {
-    quantities: ["second_law_efficiency"], labels: ["efficiency"], unit: "%", factor: 100,
-    decimals: 1,
+    quantities: ["second_law_efficiency"], columns: (share) => [percentOf(share)],
+    labels: ["efficiency"], unit: "%", decimals: 1,
   },
   power: {
-    quantities: ["power_kW", "power_expected_kW"], labels: ["measured", "expected"], unit: "kW",
-    factor: 1, decimals: 1,
+    quantities: ["power_kW", "power_residual_percent"],
+    columns: (power, residual) => [power, expectedPower(power, residual)],
+    labels: ["measured", "expected"], unit: "kW", decimals: 1,
   },
 };
 
@@ -156,7 +161,7 @@ export class MachineSection {
   }
 
   build() {
-    const band = () => el("li", {}, el("span", { class: "key-band" }), "95 % interval");
+    const band = (kind, text) => el("li", {}, el("span", { class: kind }), text);
     return el("section", { class: "machine", id: `machine-${this.id}`, tabindex: "-1",
       "aria-labelledby": `title-${this.id}` },
     el("header", {}, this.title, this.lead, this.facts),
@@ -167,12 +172,16 @@ export class MachineSection {
       sheet("Expected against measured power", this.compare)),
     sheet("What has been found", this.findings),
     sheet("Second-law efficiency", el("ul", { class: "keys" },
-      el("li", {}, el("span", { class: "key-line" }), "efficiency"), band()),
+      el("li", {}, el("span", { class: "key-line" }), "efficiency"),
+      band("key-band", "95 % interval")),
     this.chartPair("efficiency")),
     sheet("Power over time", el("ul", { class: "keys" },
       el("li", {}, el("span", { class: "key-line" }), "measured"),
-      el("li", {}, el("span", { class: "key-line dashed" }), "expected when well"), band()),
-    this.chartPair("power")),
+      el("li", {}, el("span", { class: "key-line dashed" }), "expected when well"),
+      band("key-band", "95 % interval, measured"),
+      band("key-band expected", "95 % interval, expected")),
+    this.chartPair("power"),
+    el("p", { class: "note" }, "Gaps in the dashed line are hours outside what was learned.")),
     this.sensors.node, this.rules.node, this.figures.node);
   }
 

@@ -163,9 +163,10 @@ MachineView chiller() {
   m.duty = Duty::cooling;
   m.refrigerant = "R134a";
   m.rated_power_W = 95e3;
+  m.casing_surroundings_known = true;
   m.last_read = made_up_noon();
   m.latest = chiller_assessment();
-  m.learning = {.learned = true, .text = "62 steady windows in 20 days"};
+  m.learning = {.learned = true, .text = "learned"};
   m.findings = {fouling()};
   m.points = {temperature_point("ch1_cold_in", Role::cold_in_temperature, 12.1),
               temperature_point("ch1_cold_out", Role::cold_out_temperature, 7.0),
@@ -185,6 +186,7 @@ MachineView heat_pump() {
   m.duty = Duty::heating;
   m.refrigerant = "R134a";
   m.rated_power_W = 60e3;
+  m.casing_surroundings_known = true;
   m.last_read = made_up_noon();
   m.latest = {.time = made_up_noon(),
               .mode = Mode::running,
@@ -253,15 +255,25 @@ std::vector<Bucket> made_up_trend(const TrendRequest& request) {
     const double phase = static_cast<double>(i) / static_cast<double>(request.max_points);
     const Instant begin = request.from + width * static_cast<Span::rep>(i);
     Bucket bucket{.begin = begin, .end = begin + width, .mean = {}};
+    const bool residual = request.quantity == Quantity::power_residual;
     if (phase > 0.45 && phase < 0.55) {
       bucket.mean = Refusal{
           {.code = ReasonCode::machine_off, .blame = {}}
       };
+    } else if (residual && phase > 0.7 && phase < 0.8) {
+      bucket.mean = Refusal{
+          {.code = ReasonCode::outside_baseline, .blame = {}}
+      };
+    } else if (residual) {
+      bucket.mean = Measured{.value = 0.12, .u = 0.0112};
+      bucket.min_SI = 0.1;
+      bucket.max_SI = 0.14;
+      bucket.count = 6;
+      bucket.covered = width;
     } else {
       const double wave = 1.0 + 0.08 * std::sin(2.0 * std::numbers::pi * phase);
       const bool ratio = request.quantity == Quantity::second_law_efficiency;
-      const bool expected = request.quantity == Quantity::power_expected;
-      const double base = ratio ? 0.43 : (expected ? 53e3 : 56e3);
+      const double base = ratio ? 0.43 : 56e3;
       bucket.mean = Measured{.value = base * wave, .u = base * 0.012};
       bucket.min_SI = base * wave * 0.97;
       bucket.max_SI = base * wave * 1.03;
