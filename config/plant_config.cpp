@@ -155,6 +155,7 @@ void add_points(MachineConfig& machine, const PlantFile& file, Wiring& wiring, P
                      .circuit = spec->circuit,
                      .mass_flow = spec->unit == Unit::kg_s,
                      .pair = {},
+                     .accuracy_known = !entry.accuracy.empty(),
                      .shared_variance = 0.0};
     if (entry.pair) {
       const PairShare share = pair_share(entry, *spec, file, problems);

@@ -256,8 +256,8 @@ std::string finding_text(std::string_view machine, const Finding& finding) {
     return said({machine,
                  ": the readings cannot all be true, for together they break the first or ",
                  "the second law of thermodynamics, since ", since_text(finding.onset), ".",
-                 suspects_text(finding, " One of these is wrong: ", ", "),
-                 " Figures that use it are in doubt until it is checked."});
+                 suspects_text(finding, " At least one of these is most likely wrong: ", ", "),
+                 " Figures that rest on a wrong one are in doubt until it is checked."});
   }
   return said({machine, ": a sensor no longer fits the others, since ", since_text(finding.onset),
                ".", suspects_text(finding, " Most likely ", ", then "),
@@ -268,9 +268,10 @@ std::string finding_over_text(std::string_view machine, const Finding& finding) 
   const std::string since = date_text(finding.onset.best);
   if (finding.kind == FindingKind::efficiency_drift) {
     return said({machine, " is no longer found to need more power under the same conditions; it ",
-                 "was since ", since, "."});
+                 "had needed more since ", since, "."});
   }
-  return said({machine, ": the readings fit each other again; they did not since ", since, "."});
+  return said({machine, ": the readings are no longer found to contradict each other; they had ",
+               "done so since ", since, "."});
 }
 
 std::vector<Figure> finding_figures(const Finding& finding) {

@@ -23,7 +23,8 @@ std::string onset_text(const OnsetInterval& onset, const WallClock& clock) {
 std::string one_of_text(const Finding& finding, const MachineView& machine) {
   std::string text;
   for (const Role role : finding.suspect_sensors) {
-    text += (text.empty() ? " One of these is wrong: '" : "', '") + lostwork::text(role, machine);
+    text += (text.empty() ? " At least one of these is most likely wrong: '" : "', '") +
+            lostwork::text(role, machine);
   }
   return text.empty() ? text : text + "'.";
 }
@@ -96,7 +97,7 @@ std::vector<std::string> consequences(const Finding& finding) {
   return sentences;
 }
 
-std::string text(const Evidence& evidence) {
+std::string text(FindingKind kind, const Evidence& evidence) {
   const QuantityInfo& q = info(evidence.quantity);
   const double difference = evidence.after_SI - evidence.before_SI;
   const Measured shown{.value = difference * q.per_SI, .u = evidence.u_SI * q.per_SI};
@@ -107,8 +108,15 @@ std::string text(const Evidence& evidence) {
   const auto edge = [&q, places, &tail](double value_SI) {
     return fixed(value_SI * q.per_SI + q.offset, places) + tail;
   };
-  return std::string{q.meaning} + ": " + edge(evidence.after_SI) + " where " +
-         edge(evidence.before_SI) + " was expected (difference " + with_interval(shown, unit) + ')';
+  const std::string found = std::string{q.meaning} + ": " + edge(evidence.after_SI) + " where ";
+  if (kind == FindingKind::law_broken) {
+    const std::string_view side = difference > 0.0 ? "at most " : "at least ";
+    return found + "the law allows " + std::string{side} + edge(evidence.before_SI) +
+           " (beyond it by " + with_interval({.value = std::abs(shown.value), .u = shown.u}, unit) +
+           ')';
+  }
+  return found + edge(evidence.before_SI) + " was expected (difference " +
+         with_interval(shown, unit) + ')';
 }
 
 std::string text(const RankedCause& cause, const MachineView& machine) {

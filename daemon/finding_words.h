@@ -17,7 +17,7 @@ namespace lostwork {
 // sentences, in this order, those that apply.
 [[nodiscard]] std::vector<std::string> consequences(const Finding& finding);
 // "work that the condenser destroys: 8.0 kW where 6.0 kW was expected (2.0 kW +/- 0.4 kW, 95 %)"
-[[nodiscard]] std::string text(const Evidence& evidence);
+[[nodiscard]] std::string text(FindingKind kind, const Evidence& evidence);
 // "the condenser is fouled", "the sensor 'cold water leaving' is wrong"
 [[nodiscard]] std::string text(const RankedCause& cause, const MachineView& machine);
 // What must be kept in mind before anyone acts on it; never empty.

@@ -82,10 +82,10 @@ void cause_object(JsonWriter& json, const RankedCause& cause, const MachineView&
   json.member("what_would_settle", what_would_settle(cause.cause)).end_object();
 }
 
-void evidence_object(JsonWriter& json, const Evidence& evidence) {
+void evidence_object(JsonWriter& json, FindingKind kind, const Evidence& evidence) {
   const QuantityInfo& q = info(evidence.quantity);
   json.begin_object();
-  json.member("quantity", q.name).member("text", text(evidence));
+  json.member("quantity", q.name).member("text", text(kind, evidence));
   json.member("expected", evidence.before_SI * q.per_SI + q.offset)
       .member("found", evidence.after_SI * q.per_SI + q.offset)
       .member("u", evidence.u_SI * q.per_SI)
@@ -113,7 +113,7 @@ void finding_object(JsonWriter& json, const Finding& finding, const MachineView&
     json.member("role", name(role)).member("name", text(role, machine)).end_object();
   });
   array_member(json, "evidence", finding.evidence,
-               [&json](const Evidence& evidence) { evidence_object(json, evidence); });
+               [&](const Evidence& evidence) { evidence_object(json, finding.kind, evidence); });
   strings_member(json, "cautions", cautions(finding));
   json.member("baseline", finding.baseline_id).end_object();
 }

@@ -9,6 +9,7 @@
 #include <cstdio>
 #include <functional>
 #include <optional>
+#include <string>
 #include <string_view>
 #include <vector>
 
@@ -85,11 +86,11 @@ void run(const Trial& trial, std::uint64_t seeds) {
     judge(trial, played(synthetic_history(options)), count);
   }
   std::printf(
-      "%-26s found %3d of %3d after %4.1f days; right first %3d, in two %3d, "
+      "%-24s %s found %3d of %3d after %4.1f days; right first %3d, in two %3d, "
       "wrong and clear %d, other kind %d, onset held %3d\n",
-      trial.name.data(), count.found, static_cast<int>(seeds),
-      count.found > 0 ? count.days / count.found : 0.0, count.first, count.second,
-      count.wrongly_clear, count.wrong_kind, count.onset_held);
+      trial.name.data(), trial.growth_days > 0.0 ? "growing" : "sudden ", count.found,
+      static_cast<int>(seeds), count.found > 0 ? count.days / count.found : 0.0, count.first,
+      count.second, count.wrongly_clear, count.wrong_kind, count.onset_held);
   std::fflush(stdout);
 }
 
@@ -101,44 +102,29 @@ Trial biased(std::string_view name, Input input, double bias) {
           30.0};
 }
 
+Trial fault(std::string_view name, Cause cause, double Ills::*ill, double size) {
+  return {name, cause, std::nullopt,
+          [ill, size](Ills& ills, double share) { ills.*ill = size * share; }, 30.0};
+}
+
+Trial sudden(Trial trial) {
+  trial.growth_days = 0.0;
+  return trial;
+}
+
 // Sizes that cost 5 % of the power, or move the feature of the fault by three of its uncertainties.
 std::vector<Trial> trials() {
+  const Trial fouled =
+      fault("condenser fouled", Cause::condenser_fouled, &Ills::condenser_resistance, 0.6);
+  const Trial worn = fault("compressor worn", Cause::compressor_worn, &Ills::wear, 0.05);
   return {
-      {      "condenser fouled",
-       Cause::condenser_fouled,
-       {},
-       [](Ills& i,  double share) { i.condenser_resistance = 0.6 * share; },
-       30.0},
-      {"condenser fouled, step",
-       Cause::condenser_fouled,
-       {},
-       [](Ills& i,  double share) { i.condenser_resistance = 0.6 * share; },
-       0.0 },
-      {     "evaporator fouled",
-       Cause::evaporator_fouled,
-       {},
-       [](Ills& i, double share) { i.evaporator_resistance = 0.5 * share; },
-       30.0},
-      {    "condenser flow low",
-       Cause::hot_flow_low,
-       {},
-       [](Ills& i,      double share) { i.hot_flow_missing = 0.3 * share; },
-       0.0 },
-      {      "refrigerant lost",
-       Cause::refrigerant_low,
-       {},
-       [](Ills& i,        double share) { i.charge_missing = 0.9 * share; },
-       30.0},
-      {       "compressor worn",
-       Cause::compressor_worn,
-       {},
-       [](Ills& i,                 double share) { i.wear = 0.05 * share; },
-       30.0},
-      { "compressor worn, step",
-       Cause::compressor_worn,
-       {},
-       [](Ills& i,                 double share) { i.wear = 0.05 * share; },
-       0.0 },
+      fouled,
+      sudden(fouled),
+      fault("evaporator fouled", Cause::evaporator_fouled, &Ills::evaporator_resistance, 0.5),
+      sudden(fault("condenser flow low", Cause::hot_flow_low, &Ills::hot_flow_missing, 0.3)),
+      fault("refrigerant lost", Cause::refrigerant_low, &Ills::charge_missing, 0.9),
+      worn,
+      sudden(worn),
       biased("cold out + 0.5 K", Input::cold_out, 0.5),
       biased("cold in - 0.5 K", Input::cold_in, -0.5),
       biased("hot in + 0.6 K", Input::hot_in, 0.6),

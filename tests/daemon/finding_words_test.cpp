@@ -44,8 +44,8 @@ TEST(HeadlineOfABrokenLaw, NamesTheSensorsThatCouldBeWrong) {
   finding.suspect_sensors = {Role::cold_in_temperature, Role::cold_out_temperature};
   const std::string line = headline(finding, machine, utc_clock());
   EXPECT_THAT(line, HasSubstr("The readings cannot all be true"));
-  EXPECT_THAT(line,
-              HasSubstr("One of these is wrong: 'cold water entering', 'cold water leaving'."));
+  EXPECT_THAT(line, HasSubstr("At least one of these is most likely wrong: 'cold water entering', "
+                              "'cold water leaving'."));
 }
 
 TEST(ConsequencesOfADrift, SayWhereItGoes) {
@@ -69,9 +69,19 @@ TEST(TextOfEvidence, GivesADifferenceOfTemperaturesInKelvin) {
   const Evidence evidence{
       .quantity = Quantity::condensing, .before_SI = 309.15, .after_SI = 311.35, .u_SI = 0.3};
   EXPECT_THAT(
-      text(evidence),
+      text(FindingKind::efficiency_drift, evidence),
       HasSubstr("38.2 \u00b0C where 36.0 \u00b0C was expected (difference 2.2 K \u00b1 0.6 K (95 "
                 "%))"));
+}
+
+// A window's condensing temperature that lies 1.5 K below the sink.
+TEST(TextOfEvidence, GivesTheBoundOfALaw) {
+  const Evidence evidence{
+      .quantity = Quantity::condensing, .before_SI = 303.15, .after_SI = 301.65, .u_SI = 0.3};
+  EXPECT_THAT(
+      text(FindingKind::law_broken, evidence),
+      HasSubstr("28.5 \u00b0C where the law allows at least 30.0 \u00b0C (beyond it by 1.5 K "
+                "\u00b1 0.6 K (95 %))"));
 }
 
 TEST(CautionsOfADrift, DeferToLicensedWorkAndLocalCode) {

@@ -33,6 +33,7 @@ struct ModelPoint {
   int circuit = 1;
   bool mass_flow = false;           // a flow in kg/s instead of m3/s
   std::optional<std::size_t> pair;  // index of the matched pair that it belongs to
+  bool accuracy_known = true;       // false: u is that of the digits alone
   double shared_variance = 0.0;     // share 0..1 of u^2 that the points of one pair have in common
 };
 

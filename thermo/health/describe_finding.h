@@ -1,6 +1,6 @@
 // Fills a finding with what is known of it on a day: causes, place, cost, onset.
 //
-// Pure, part of health.h.
+// Pure, part of health.h. Needs a baseline.
 #pragma once
 
 #include "thermo/health/health.h"
@@ -8,6 +8,8 @@
 
 namespace lostwork {
 
+// At most five causes, each with a probability of 0.02 and more; none where nothing explains what
+// was seen.
 void describe_causes(Finding& finding, const Judgement& judgement);
 
 // The component whose lost work grew most, if it did so beyond doubt and beyond the next one's;

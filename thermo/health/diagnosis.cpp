@@ -143,19 +143,27 @@ std::vector<SensorBias> first_biases(const Inputs& inputs) {
 }
 
 // A bias of the sensor with that sign: searched along the trace of a first bias, then along that of
-// the bias found, for heats and approaches do not follow a large one in proportion.
+// the bias found, for heats and approaches do not follow a large one in proportion. A bias whose
+// removal leaves the fluid or the heat ends the search with the one before.
 std::optional<Weighed> weigh_sensor(const std::vector<Seen>& seen, const MachineModel& machine,
                                     const Baseline& baseline, const Inputs& inputs,
                                     const SensorBias& first) {
+  constexpr int rounds = 6;
+  constexpr double near_enough = 0.02;
   std::optional<Weighed> weighed;
   double bias_SI = first.bias_SI;
-  for (int round = 0; round < 3; ++round) {
+  for (int round = 0; round < rounds; ++round) {
     const auto trace = sensor_trace(machine, baseline, inputs, first.input, bias_SI);
-    weighed = trace ? weigh(seen, *trace) : std::nullopt;
-    if (!weighed) {
+    const auto next = trace ? weigh(seen, *trace) : std::nullopt;
+    if (!next) {
       break;
     }
-    bias_SI = weighed->cause.amount_SI.value;
+    weighed = next;
+    const double found_SI = next->cause.amount_SI.value;
+    if (std::abs(found_SI - bias_SI) <= near_enough * std::abs(bias_SI)) {
+      break;
+    }
+    bias_SI = found_SI;
   }
   return weighed;
 }

@@ -1,5 +1,6 @@
-// What health has found out about a machine: a drift of its efficiency, or a sensor that does not
-// fit the others; with size, onset, cost, place and the figures that it rests on.
+// What health has found out about a machine: a drift of its efficiency, a sensor that does not fit
+// the others, or readings that break a law; with size, onset, cost, place and the figures that it
+// rests on.
 //
 // Plain values. Every figure that can be uncertain carries its standard uncertainty (k = 1).
 #pragma once
@@ -72,7 +73,8 @@ struct OnsetInterval {
 };
 
 // One figure that the finding rests on: its mean over the days since the onset, and what the
-// baseline expected under the same conditions. SI; u is of the difference.
+// baseline expected under the same conditions; of a broken law, the figure of the last window that
+// changed the finding, and the bound that the law sets. SI; u is of the difference.
 struct Evidence {
   Quantity quantity{};
   double before_SI = 0.0;
@@ -89,6 +91,7 @@ struct RankedCause {
   Measured amount_SI;
 };
 
+// With law_broken size, cost, component, causes and baseline mean nothing.
 struct Finding {
   std::string id;       // stable text, [A-Za-z0-9._-]: "chiller-1.efficiency_drift.20240503"
   std::string machine;  // MachineModel::id
@@ -114,7 +117,7 @@ struct Finding {
   // Most likely first. The first is "the" cause only if cause_is_clear.
   std::vector<RankedCause> causes;
   bool cause_is_clear = false;        // at least three times as likely as the next
-  std::vector<Role> suspect_sensors;  // most likely first; empty: none
+  std::vector<Role> suspect_sensors;  // most likely first, of a broken law in no order; empty: none
   std::vector<Evidence> evidence;
   std::string baseline_id;  // the baseline that it was compared with
 };

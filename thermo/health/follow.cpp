@@ -88,8 +88,8 @@ std::optional<Finding> follow_drift(const HealthModel& model, HealthState& state
   if (j.sensor_called) {  // not the machine
     return already ? std::optional{end_finding(state, *already, now, false)} : std::nullopt;
   }
-  const bool sensor_open = open_of(state, FindingKind::sensor_suspect).has_value() ||
-                           open_of(state, FindingKind::law_broken).has_value();
+  const bool law_open = open_of(state, FindingKind::law_broken).has_value();
+  const bool sensor_open = law_open || open_of(state, FindingKind::sensor_suspect);
   if (!already && (!j.power_alarm || (sensor_open && !machine_is_clear(j.diagnosis)))) {
     return std::nullopt;
   }
@@ -118,7 +118,8 @@ std::optional<Finding> follow_drift(const HealthModel& model, HealthState& state
   describe_components(finding, j);
   describe_cost(model, state, finding);
   finding.evidence = evidence_of(*state.baseline, j.days, j.shift);
-  if (finding.state == FindingState::watch && confirmed(j, progress)) {
+  const bool readable = !law_open || machine_is_clear(j.diagnosis);
+  if (finding.state == FindingState::watch && readable && confirmed(j, progress)) {
     finding.state = FindingState::active;
     finding.confirmed = now;
   }

@@ -3,6 +3,7 @@
 #include "thermo/health/follow.h"
 #include "thermo/health/laws.h"
 #include "thermo/health/learning.h"
+#include "thermo/health/open_finding.h"
 
 #include <chrono>
 #include <utility>
@@ -69,7 +70,12 @@ DaySums& day_of(HealthState& state, std::int64_t day) {
   return *state.today;
 }
 
-void take_sample(HealthState& state, const Sample& sample, const Inputs& inputs) {
+// What cannot be is not learned from, nor what was seen beside it: it is followed alone.
+void take_sample(HealthState& state, const Sample& sample, const Inputs& inputs, bool lawful) {
+  const bool learned_from = lawful && !open_of(state, FindingKind::law_broken);
+  if (!state.baseline && !learned_from) {
+    return;
+  }
   DaySums& sums = day_of(state, day_number(sample.end));
   if (!state.baseline) {
     gather(state, sample);
@@ -77,7 +83,9 @@ void take_sample(HealthState& state, const Sample& sample, const Inputs& inputs)
     add_window(sums, *state.baseline, sample, inputs);
   } else {
     ++sums.excluded;
-    gather_newcomer(state, sample);
+    if (learned_from) {
+      gather_newcomer(state, sample);
+    }
   }
 }
 
@@ -90,17 +98,13 @@ HealthUpdate take_window(const HealthModel& model, HealthState state, const Wind
   }
   close_days_before(model, update, day_number(window.end));
   update.next.last_window_end = window.end;
-  const LawCheck laws = check_laws(window);
+  const LawCheck laws = check_laws(model.machine, window);
   if (auto finding = follow_laws(model, update.next, window.end, laws)) {
     update.changed.push_back(std::move(*finding));
   }
-  const bool learning = !update.next.baseline;
-  if (learning && laws.broken != 0U) {
-    return update;  // what cannot be is not learned from
-  }
   const Inputs inputs = inputs_of(model.machine, window);
   if (const auto sample = sample_of(model.machine, window, inputs)) {
-    take_sample(update.next, *sample, inputs);
+    take_sample(update.next, *sample, inputs, laws.broken == 0U);
   }
   return update;
 }
@@ -166,14 +170,24 @@ HealthState accept_baseline(HealthState state) {
 }
 
 HealthUpdate begin_learning(const HealthModel& /*model*/, HealthState state, Instant now) {
-  HealthUpdate update{.next = {}, .changed = std::move(state.findings), .days_closed = {}};
-  for (Finding& finding : update.changed) {
+  HealthUpdate update;
+  update.next.generation = state.generation + 1;
+  update.next.last_window_end = state.last_window_end;
+  // Laws need no baseline: what was seen of them stays.
+  update.next.law_windows = std::move(state.law_windows);
+  update.next.laws_said = state.laws_said;
+  for (std::size_t i = 0; i < state.findings.size(); ++i) {
+    Finding& finding = state.findings[i];
+    if (finding.kind == FindingKind::law_broken) {
+      update.next.findings.push_back(std::move(finding));
+      update.next.progress.push_back(state.progress[i]);
+      continue;
+    }
     finding.state = FindingState::over;
     finding.ended = now;
     finding.updated = now;
+    update.changed.push_back(std::move(finding));
   }
-  update.next.generation = state.generation + 1;
-  update.next.last_window_end = state.last_window_end;
   return update;
 }
 

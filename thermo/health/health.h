@@ -141,7 +141,7 @@ struct LearningStatus {
 // A person accepts the learned baseline.
 [[nodiscard]] HealthState accept_baseline(HealthState state);
 // After service (cleaned, charged, part replaced): a new baseline is learned from now on. Open
-// findings end.
+// findings end, but for a broken law, which rests on no baseline.
 [[nodiscard]] HealthUpdate begin_learning(const HealthModel& model, HealthState state, Instant now);
 
 // Findings that are not over.

@@ -38,7 +38,7 @@ struct LawWindow {
 
 struct HealthState {
   // Of the layout; an archive of another one is refused with ArchiveDamaged.
-  static constexpr std::uint32_t layout = 2;
+  static constexpr std::uint32_t layout = 3;
 
   std::optional<Instant> last_window_end;
   std::optional<DaySums> today;
@@ -61,6 +61,7 @@ struct HealthState {
   std::vector<Finding> findings;          // not over
   std::vector<FindingProgress> progress;  // of the same
   std::vector<LawWindow> law_windows;     // of the last day or the last dozen
+  std::uint32_t laws_said = 0;            // those that the open finding names; a bit a law
 };
 
 template <class Archive>
@@ -88,7 +89,7 @@ void archive(Archive& a, HealthState& s) {
   }
   a(s.last_window_end, s.today, s.generation, s.extension, s.samples, s.newcomers, s.learning_days,
     s.baseline, s.accepted, s.unattended, s.days, s.recent_inputs, s.history_from, s.charts,
-    s.findings, s.progress, s.law_windows);
+    s.findings, s.progress, s.law_windows, s.laws_said);
 }
 
 }  // namespace lostwork

@@ -22,7 +22,7 @@ double least_bias_SI(Role role, double value_SI) {
 }
 
 // Where a fault of the machine shows itself besides the power (methods.md 6.3). Flows and balances
-// are not among them: they tell of pumps and of sensors.
+// are not among them: they show pumps and sensors, so that their silence says nothing.
 constexpr std::array machine_features{Feature::hot_approach, Feature::cold_approach,
                                       Feature::superheat, Feature::subcooling_share,
                                       Feature::efficiency};

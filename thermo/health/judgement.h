@@ -1,6 +1,6 @@
 // What the charts, the shifts of the last fortnight and the diagnosis say together on one day.
 //
-// Pure, part of health.h.
+// Pure, part of health.h. Needs a baseline.
 #pragma once
 
 #include "thermo/health/diagnosis.h"

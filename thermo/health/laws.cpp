@@ -1,5 +1,6 @@
 #include "thermo/health/laws.h"
 
+#include "thermo/health/day.h"
 #include "thermo/health/open_finding.h"
 
 #include <algorithm>
@@ -18,58 +19,113 @@ constexpr std::size_t least_windows = 12;
 constexpr double lasting_share = 0.8;
 constexpr Span memory = std::chrono::hours{24};
 // A machine with few steady windows is judged by its last dozen, if they are no older [E].
-constexpr Span longest_memory = std::chrono::days{7};
+constexpr Span longest_memory = std::chrono::days{30};
 
 using enum Role;
 using Roles = std::vector<Role>;
 
-struct Law {
+struct Form {
   Quantity shown;  // the figure that breaks it
   // What must not fall below 0: `above` less `below`, or `above` alone.
   Quantity above;
   std::optional<Quantity> below;
   bool both_sides;  // must be 0
   double factor;    // standard uncertainties
-  Roles roles;
 };
 
-Law zero(Quantity q, Roles roles) {
-  return {q, q, std::nullopt, true, 3.0, std::move(roles)};
+constexpr Form zero(Quantity q) {
+  return {.shown = q, .above = q, .below = std::nullopt, .both_sides = true, .factor = 3.0};
 }
-Law not_negative(Quantity q, Roles roles) {
-  return {q, q, std::nullopt, false, 2.0, std::move(roles)};
+constexpr Form not_negative(Quantity q) {
+  return {.shown = q, .above = q, .below = std::nullopt, .both_sides = false, .factor = 2.0};
 }
-Law in_order(Quantity shown, Quantity above, Quantity below, Roles roles) {
-  return {shown, above, below, false, 2.0, std::move(roles)};
+constexpr Form in_order(Quantity shown, Quantity above, Quantity below) {
+  return {.shown = shown, .above = above, .below = below, .both_sides = false, .factor = 2.0};
 }
 
-const std::vector<Law>& laws() {
-  using Q = Quantity;
-  static const std::vector<Law> all{
-      zero(Q::energy_residual, Roles{power, cold_in_temperature, cold_out_temperature, cold_flow,
-                                     hot_in_temperature, hot_out_temperature, hot_flow}),
-      in_order(Q::cold_out, Q::cold_in, Q::cold_out,
-               Roles{cold_in_temperature, cold_out_temperature}),
-      in_order(Q::hot_out, Q::hot_out, Q::hot_in, Roles{hot_in_temperature, hot_out_temperature}),
-      in_order(Q::evaporating, Q::cold_in, Q::evaporating,
-               Roles{suction_pressure, cold_in_temperature}),
-      in_order(Q::condensing, Q::condensing, Q::hot_in,
-               Roles{discharge_pressure, hot_in_temperature}),
-      not_negative(Q::lost_compressor, Roles{suction_pressure, suction_temperature,
-                                             discharge_pressure, discharge_temperature, power}),
-      not_negative(Q::lost_condenser,
-                   Roles{discharge_pressure, discharge_temperature, liquid_temperature,
-                         hot_in_temperature, hot_out_temperature}),
-      not_negative(Q::lost_expansion,
-                   Roles{discharge_pressure, liquid_temperature, suction_pressure}),
-      not_negative(Q::lost_evaporator, Roles{suction_pressure, suction_temperature,
-                                             cold_in_temperature, cold_out_temperature}),
-  };
-  return all;
-}
+// In the order of Law.
+constexpr std::array<Form, law_count> forms{
+    zero(Quantity::energy_residual),
+    in_order(Quantity::cold_out, Quantity::cold_in, Quantity::cold_out),
+    in_order(Quantity::hot_out, Quantity::hot_out, Quantity::hot_in),
+    in_order(Quantity::evaporating, Quantity::cold_in, Quantity::evaporating),
+    in_order(Quantity::condensing, Quantity::condensing, Quantity::hot_in),
+    not_negative(Quantity::lost_compressor),
+    not_negative(Quantity::lost_condenser),
+    not_negative(Quantity::lost_evaporator),
+};
 
 constexpr std::uint32_t bit(std::size_t law) {
   return 1U << law;
+}
+
+bool contains(const Roles& roles, Role role) {
+  return std::find(roles.begin(), roles.end(), role) != roles.end();
+}
+
+void append(Roles& to, const Roles& from) {
+  std::copy_if(from.begin(), from.end(), std::back_inserter(to),
+               [&](Role role) { return !contains(to, role); });
+}
+
+const Roles cold_meter{cold_in_temperature, cold_out_temperature, cold_flow};
+const Roles hot_meter{hot_in_temperature, hot_out_temperature, hot_flow};
+const Roles circuit{suction_pressure, suction_temperature, discharge_pressure,
+                    discharge_temperature, liquid_temperature};
+
+bool measures(const MachineModel& machine, const Roles& roles) {
+  return std::all_of(roles.begin(), roles.end(),
+                     [&](Role role) { return machine.index_of(role).has_value(); });
+}
+
+// What the refrigerant's flow rests on: the heat meters there are, or else the power.
+Roles flow_roles(const MachineModel& machine) {
+  Roles roles;
+  for (const Roles& meter : {cold_meter, hot_meter}) {
+    append(roles, measures(machine, meter) ? meter : Roles{});
+  }
+  return roles.empty() ? Roles{power} : roles;
+}
+
+// Whether or not they are there.
+Roles roles_of(Law law, const MachineModel& machine) {
+  Roles roles;
+  switch (law) {
+    case Law::heats_close:
+      append(roles, cold_meter);
+      append(roles, hot_meter);
+      // With the circuit measured, the casing's heat is the power less what the refrigerant took,
+      // and the power falls out.
+      append(roles, measures(machine, circuit) ? circuit : Roles{power});
+      break;
+    case Law::cold_stream_cools: roles = {cold_in_temperature, cold_out_temperature}; break;
+    case Law::hot_stream_warms: roles = {hot_in_temperature, hot_out_temperature}; break;
+    case Law::evaporates_below: roles = {suction_pressure, cold_in_temperature}; break;
+    case Law::condenses_above: roles = {discharge_pressure, hot_in_temperature}; break;
+    case Law::compressor_entropy:
+      roles = {power};
+      append(roles, circuit);
+      append(roles, flow_roles(machine));
+      break;
+    case Law::condenser_entropy:
+      roles = {discharge_pressure, discharge_temperature, liquid_temperature, hot_in_temperature,
+               hot_out_temperature};
+      break;
+    case Law::evaporator_entropy:
+      roles = {suction_pressure,    suction_temperature,  evaporator_out_temperature,
+               cold_in_temperature, cold_out_temperature, liquid_temperature,
+               discharge_pressure};
+      break;
+    case Law::count: break;
+  }
+  return roles;
+}
+
+bool accuracies_known(const MachineModel& machine, const Roles& roles) {
+  return std::all_of(roles.begin(), roles.end(), [&](Role role) {
+    const auto index = machine.index_of(role);
+    return !index || machine.points[*index].accuracy_known;
+  });
 }
 
 double variance(const WindowMean& mean) {
@@ -79,15 +135,15 @@ double variance(const WindowMean& mean) {
 
 // What must not fall below 0, with u; of two quantities without the correlation that a matched pair
 // has: the wider is the safer here.
-std::optional<Measured> figure(const Law& law, const Window& window) {
-  const auto& above = window[law.above];
+std::optional<Measured> figure(const Form& form, const Window& window) {
+  const auto& above = window[form.above];
   if (!above) {
     return std::nullopt;
   }
-  if (!law.below) {
+  if (!form.below) {
     return Measured{.value = above->mean_SI, .u = std::sqrt(variance(*above))};
   }
-  const auto& below = window[*law.below];
+  const auto& below = window[*form.below];
   if (!below) {
     return std::nullopt;
   }
@@ -95,11 +151,11 @@ std::optional<Measured> figure(const Law& law, const Window& window) {
                   .u = std::sqrt(variance(*above) + variance(*below))};
 }
 
-Evidence evidence_of(const Law& law, const Window& window, const Measured& off) {
-  const double found = window[law.shown]->mean_SI;
+Evidence evidence_of(const Form& form, const Window& window, const Measured& off) {
+  const double found = window[form.shown]->mean_SI;
   // The quantity shown is `above` or `below`: at the bound the two are equal.
-  const double bound = law.below == law.shown ? found + off.value : found - off.value;
-  return {.quantity = law.shown, .before_SI = bound, .after_SI = found, .u_SI = off.u};
+  const double bound = form.below == form.shown ? found + off.value : found - off.value;
+  return {.quantity = form.shown, .before_SI = bound, .after_SI = found, .u_SI = off.u};
 }
 
 void forget(std::vector<LawWindow>& windows, Instant now) {
@@ -112,82 +168,106 @@ void forget(std::vector<LawWindow>& windows, Instant now) {
 }
 
 struct Broken {
-  std::uint32_t lasting = 0;  // in four of five windows
-  std::uint32_t still = 0;    // in more than one of five
+  std::uint32_t lasting = 0;  // in four of five windows, a dozen at least
+  std::uint32_t whole = 0;    // in four of five windows, a dozen at least
 };
 
 Broken broken_in(const std::vector<LawWindow>& windows) {
   Broken out;
-  for (std::size_t law = 0; law < laws().size(); ++law) {
-    double tested = 0.0;
-    double broken = 0.0;
+  for (std::size_t law = 0; law < law_count; ++law) {
+    std::size_t tested = 0;
+    std::size_t broken = 0;
     for (const LawWindow& window : windows) {
-      tested += (window.tested & bit(law)) != 0U ? 1.0 : 0.0;
-      broken += (window.broken & bit(law)) != 0U ? 1.0 : 0.0;
+      tested += (window.tested & bit(law)) != 0U ? 1U : 0U;
+      broken += (window.broken & bit(law)) != 0U ? 1U : 0U;
     }
-    const bool enough = tested >= static_cast<double>(least_windows);
-    out.lasting |= enough && broken >= lasting_share * tested ? bit(law) : 0U;
-    out.still |= broken > (1.0 - lasting_share) * tested ? bit(law) : 0U;
+    if (tested >= least_windows) {
+      const double share = static_cast<double>(broken) / static_cast<double>(tested);
+      out.lasting |= share >= lasting_share ? bit(law) : 0U;
+      out.whole |= share <= 1.0 - lasting_share ? bit(law) : 0U;
+    }
   }
   return out;
 }
 
 // The sensors that all the broken laws have in common; all of theirs where they share none.
-Roles suspects_of(std::uint32_t broken) {
-  Roles common;
+Roles suspects_of(std::uint32_t broken, const MachineModel& machine) {
   Roles any;
-  bool first = true;
-  for (std::size_t law = 0; law < laws().size(); ++law) {
-    if ((broken & bit(law)) == 0U) {
-      continue;
+  for (std::size_t law = 0; law < law_count; ++law) {
+    append(any, (broken & bit(law)) != 0U ? sensors_of(static_cast<Law>(law), machine) : Roles{});
+  }
+  Roles common = any;
+  for (std::size_t law = 0; law < law_count; ++law) {
+    if ((broken & bit(law)) != 0U) {
+      const Roles roles = sensors_of(static_cast<Law>(law), machine);
+      std::erase_if(common, [&](Role role) { return !contains(roles, role); });
     }
-    const Roles& roles = laws()[law].roles;
-    const auto belongs = [&](Role r) {
-      return std::find(roles.begin(), roles.end(), r) != roles.end();
-    };
-    if (first) {
-      common = roles;
-    } else {
-      common.erase(std::remove_if(common.begin(), common.end(), std::not_fn(belongs)),
-                   common.end());
-    }
-    std::copy_if(roles.begin(), roles.end(), std::back_inserter(any),
-                 [&](Role r) { return std::find(any.begin(), any.end(), r) == any.end(); });
-    first = false;
   }
   return common.empty() ? any : common;
 }
 
-Roles measured_of(const MachineModel& machine, Roles roles) {
-  const auto missing = [&](Role role) { return !machine.index_of(role); };
-  roles.erase(std::remove_if(roles.begin(), roles.end(), missing), roles.end());
-  return roles;
+// The first broken window after the last that was tested and whole of one of these laws, looked for
+// from the newest back; a whole one among many broken does not stop the search.
+OnsetInterval onset_of(const std::vector<LawWindow>& windows, std::uint32_t laws) {
+  constexpr int whole_in_a_row = 3;
+  auto first = windows.end();
+  auto whole = windows.end();
+  int row = 0;
+  for (auto w = windows.end(); w != windows.begin() && row < whole_in_a_row;) {
+    --w;
+    const bool broken = (w->broken & laws) != 0U;
+    first = broken ? w : first;
+    row = broken || (w->tested & laws) == 0U ? 0 : row + 1;
+    whole = row == 1 ? w : whole;
+  }
+  const bool bounded = row >= whole_in_a_row;
+  return {.best = first->end,
+          .earliest = bounded ? whole->end : windows.front().end - memory,
+          .latest = first->end};
 }
 
-// Since the first broken window of the present run; the last whole one bounds it.
-OnsetInterval onset_of(const std::vector<LawWindow>& windows, std::uint32_t broken) {
-  const auto first = std::find_if(windows.begin(), windows.end(),
-                                  [&](const LawWindow& w) { return (w.broken & broken) != 0U; });
-  const Instant best = first->end;
-  const Instant before = first == windows.begin() ? best : std::prev(first)->end;
-  return {.best = best, .earliest = before, .latest = best};
+// A suspicion that people were told of, by the name of a sensor that is suspected here too.
+bool told_already(const HealthState& state, const Roles& suspects) {
+  const auto at = open_of(state, FindingKind::sensor_suspect);
+  if (!at || state.findings[*at].state != FindingState::active) {
+    return false;
+  }
+  const Roles& named = state.findings[*at].suspect_sensors;
+  return !named.empty() && contains(suspects, named.front());
+}
+
+// What was seen under broken laws says nothing of the machine: charts and onsets begin again.
+Finding end_law_finding(HealthState& state, std::size_t at, Instant end) {
+  state.laws_said = 0;
+  if (state.baseline && !open_of(state, FindingKind::efficiency_drift)) {
+    state.charts = {};
+    state.history_from = day_number(end);
+  }
+  return closed(state, at, end);
 }
 
 }  // namespace
 
-LawCheck check_laws(const Window& window) {
+std::vector<Role> sensors_of(Law law, const MachineModel& machine) {
+  Roles roles = roles_of(law, machine);
+  std::erase_if(roles, [&](Role role) { return !machine.index_of(role); });
+  return roles;
+}
+
+LawCheck check_laws(const MachineModel& machine, const Window& window) {
   LawCheck check;
-  for (std::size_t i = 0; i < laws().size(); ++i) {
-    const Law& law = laws()[i];
-    const auto off = figure(law, window);
-    if (!off) {
+  for (std::size_t i = 0; i < law_count; ++i) {
+    const Form& form = forms.at(i);
+    const auto off = figure(form, window);
+    if (!off || !std::isfinite(off->value) || !(off->u > 0.0) ||
+        !accuracies_known(machine, sensors_of(static_cast<Law>(i), machine))) {
       continue;
     }
     check.tested |= bit(i);
-    const double least = -law.factor * off->u;
-    if (off->value < least || (law.both_sides && -off->value < least)) {
+    const double least = -form.factor * off->u;
+    if (off->value < least || (form.both_sides && -off->value < least)) {
       check.broken |= bit(i);
-      check.evidence.push_back(evidence_of(law, window, *off));
+      check.evidence.at(i) = evidence_of(form, window, *off);
     }
   }
   return check;
@@ -199,26 +279,39 @@ std::optional<Finding> follow_laws(const HealthModel& model, HealthState& state,
   forget(state.law_windows, end);
   const Broken broken = broken_in(state.law_windows);
   const auto already = open_of(state, FindingKind::law_broken);
-  if (already && broken.still == 0U) {
-    return closed(state, *already, end);
+  const std::uint32_t said = state.laws_said & ~broken.whole;
+  if (already && said == 0U) {
+    return end_law_finding(state, *already, end);
   }
-  if (broken.lasting == 0U || open_of(state, FindingKind::sensor_suspect)) {
+  const std::uint32_t now = said | broken.lasting;
+  if ((broken.lasting & check.broken) == 0U || (already && now == state.laws_said)) {
     return std::nullopt;
   }
-  const Roles suspects = measured_of(model.machine, suspects_of(broken.lasting));
-  if (already && state.findings[*already].suspect_sensors == suspects) {
+  const Roles suspects = suspects_of(now, model.machine);
+  if (!already && told_already(state, suspects)) {
     return std::nullopt;
   }
+  state.laws_said = now;
   Finding& finding = state.findings[opened(model, state, FindingKind::law_broken, end)];
-  if (finding.state != FindingState::active) {
+  if (!already) {
     finding.state = FindingState::active;
     finding.confirmed = end;
-    finding.onset = onset_of(state.law_windows, broken.lasting);
+    finding.onset = onset_of(state.law_windows, now);
   }
   finding.updated = end;
   finding.suspect_sensors = suspects;
-  finding.evidence = check.evidence;
+  finding.evidence.clear();
+  for (std::size_t law = 0; law < law_count; ++law) {
+    if (const auto& evidence = check.evidence.at(law); evidence && (now & bit(law)) != 0U) {
+      finding.evidence.push_back(*evidence);
+    }
+  }
   return finding;
+}
+
+bool any_broken(const HealthState& state) {
+  return std::any_of(state.law_windows.begin(), state.law_windows.end(),
+                     [](const LawWindow& w) { return w.broken != 0U; });
 }
 
 }  // namespace lostwork

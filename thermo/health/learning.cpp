@@ -1,6 +1,7 @@
 #include "thermo/health/learning.h"
 
 #include "thermo/health/diagnosis.h"
+#include "thermo/health/laws.h"
 #include "thermo/health/open_finding.h"
 
 #include <algorithm>
@@ -340,7 +341,7 @@ LearningStatus learning_status(const HealthModel& model, const HealthState& stat
     return status;
   }
   status.missing = missing_counts(model.options, state);
-  if (open_of(state, FindingKind::law_broken)) {
+  if (open_of(state, FindingKind::law_broken) || (state.samples.empty() && any_broken(state))) {
     status.missing.push_back(LearningNeed::laws);
   } else if (state.samples.empty() && state.last_window_end) {
     status.missing.push_back(LearningNeed::inputs);

@@ -16,8 +16,8 @@ struct Shape {
 };
 
 constexpr double endless = 1e4;
-// Lengths a fifth apart: a ramp that ends between two of them is taken for neither's onset by more
-// than the interval owns.
+// Lengths a sixth to a half apart: a ramp that ends between two is fitted by both, and the interval
+// covers the rest [E].
 constexpr auto shapes = std::to_array<Shape>({
     {    0.0,  1.0},
     {    2.0,  1.0},

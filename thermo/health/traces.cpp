@@ -126,7 +126,10 @@ std::optional<Trace> sensor_trace(const MachineModel& machine, const Baseline& b
   Trace trace{.cause = Cause::sensor, .role = role_of(input), .unit_SI = bias_SI};
   double largest = 0.0;
   for (std::size_t f = 0; f < feature_count; ++f) {
-    if (biased.at(f) && right.at(f)) {
+    if (biased.at(f) && !right.at(f)) {
+      return std::nullopt;
+    }
+    if (biased.at(f)) {
       trace.mean.at(f) = (*biased.at(f) - *right.at(f)) / info(static_cast<Feature>(f)).natural;
       largest = std::max(largest, std::abs(trace.mean.at(f)));
     }

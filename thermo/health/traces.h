@@ -29,8 +29,8 @@ struct Trace {
 [[nodiscard]] double first_bias_SI(Input input, double value_SI);
 
 // What a bias of one sensor leaves: the residuals as the inputs are now, less those without it.
-// Exact for that bias, so that a search ends with the trace of the bias that it found. None where
-// the input is missing or moves nothing.
+// Exact for that bias alone: a search repeats it until the bias found is the bias assumed. None
+// where the input is missing, moves nothing, or cannot be that far off: a residual is lost.
 [[nodiscard]] std::optional<Trace> sensor_trace(const MachineModel& machine,
                                                 const Baseline& baseline, const Inputs& inputs,
                                                 Input input, double bias_SI);
