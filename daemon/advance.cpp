@@ -2,6 +2,7 @@
 
 #include "thermo/cycle/ledger.h"
 
+#include <chrono>
 #include <iterator>
 #include <utility>
 
@@ -52,6 +53,16 @@ bool is_a_new_day(const std::optional<Instant>& before, Instant now) {
   return before && std::chrono::floor<days>(*before) != std::chrono::floor<days>(now);
 }
 
+// Of the time since the scan before, where none was lost in between.
+double energy_used_J(const StepModel& model, const MachineState& state, Instant now,
+                     const QuantityValues& values) {
+  const auto& power = values[Quantity::power];
+  if (!power || !state.last_scan || now - *state.last_scan > 3 * model.machine.scan_period) {
+    return 0.0;
+  }
+  return power->value * std::chrono::duration<double>(now - *state.last_scan).count();
+}
+
 void follow_health(const StepModel& model, MachineState& state, Instant now, MachineStep& out) {
   for (const Window& window : out.windows) {
     take_up(take_window(model.health, std::move(state.health), window), state, out);
@@ -59,6 +70,8 @@ void follow_health(const StepModel& model, MachineState& state, Instant now, Mac
   if (is_a_new_day(state.last_scan, now)) {
     take_up(advance_time(model.health, std::move(state.health), now), state, out);
   }
+  state.health = take_energy(std::move(state.health), now,
+                             energy_used_J(model, state, now, out.assessment.values));
 }
 
 void follow_steadiness(const StepModel& model, MachineState& state, const Scan& scan,

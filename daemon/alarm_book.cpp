@@ -150,11 +150,10 @@ class Round {
       slot = book_.slots.insert(book_.slots.end(), std::move(fresh));
     }
     if (active && is_active(slot->alarm.state)) {
-      slot->alarm.since = finding.onset.best;
       slot->alarm.text = finding_text(model_.name, finding);
       slot->alarm.evidence = finding_figures(finding);
     } else if (active) {
-      slot->alarm.since = finding.onset.best;
+      slot->alarm.since = finding.confirmed.value_or(now());
       change(*slot, AlarmStimulus::occurs, finding_text(model_.name, finding),
              finding_figures(finding));
     } else if (is_active(slot->alarm.state)) {

@@ -9,10 +9,13 @@
 #include "storage/history.h"
 #include "storage/store.h"
 
+#include <algorithm>
 #include <array>
 #include <cerrno>
+#include <chrono>
 #include <filesystem>
 #include <fstream>
+#include <map>
 #include <memory>
 #include <optional>
 #include <stdexcept>
@@ -71,20 +74,50 @@ class WholeFile {
   std::ofstream out_;
 };
 
-// Reads the file once from end to end: how many rows it has, or its first error.
-tl::expected<std::size_t, std::string> counted_rows(const std::filesystem::path& input,
-                                                    const Wiring& wiring) {
+struct Rows {
+  std::size_t count = 0;
+  std::map<Span, std::size_t> spacings;  // how often each occurs
+};
+
+// Reads the file once from end to end: what rows it has, or its first error.
+tl::expected<Rows, std::string> counted_rows(const std::filesystem::path& input,
+                                             const Wiring& wiring) {
   auto history = CsvHistory::open(input, wiring);
   if (!history) {
     return tl::unexpected{history.error()};
   }
-  for (std::size_t rows = 0;; ++rows) {
+  std::optional<Instant> last;
+  for (Rows rows;; ++rows.count) {
     const auto row = history->next();
     if (!row) {
       return tl::unexpected{row.error()};
     }
     if (!*row) {
       return rows;
+    }
+    if (last) {
+      ++rows.spacings[(*row)->time - *last];
+    }
+    last = (*row)->time;
+  }
+}
+
+// Steadiness is judged by the samples that are due: with rows further apart than the scan period
+// hardly any interval is steady, and nothing is learned.
+void warn_of_spacing(const PlantConfig& plant, const Rows& rows, std::ostream& err) {
+  const auto usual =
+      std::max_element(rows.spacings.begin(), rows.spacings.end(),
+                       [](const auto& a, const auto& b) { return a.second < b.second; });
+  if (usual == rows.spacings.end()) {
+    return;
+  }
+  const double usual_s = std::chrono::duration<double>(usual->first).count();
+  for (const MachineConfig& machine : plant.machines) {
+    const double scan_s = std::chrono::duration<double>(machine.model.scan_period).count();
+    if (usual_s > 1.2 * scan_s || usual_s < 0.8 * scan_s) {
+      err << "lostwork replay: note: the rows are " << usual_s << " s apart, but "
+          << machine.model.id << " has scan_s = " << scan_s << "; enter scan_s = " << usual_s
+          << " for this history, or steady intervals will be missed\n";
     }
   }
 }
@@ -178,7 +211,8 @@ int replay(const Arguments& given, const PlantConfig& plant, std::ostream& out, 
   if (results != nullptr) {
     write_result_header(*results);
   }
-  Progress progress{err, "replay", *rows};
+  warn_of_spacing(plant, *rows, err);
+  Progress progress{err, "replay", rows->count};
   run_through(plant, *history, pipeline, {.results = results, .store = store.get()}, progress);
   if (file) {
     file->finish();

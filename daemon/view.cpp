@@ -40,10 +40,14 @@ MachineView machine_view(const PlantConfig& plant, const StepModel& model) {
   return out;
 }
 
-void show_readings(MachineView& view, const Scan& scan) {
+// A constant is always good and tells of no device that answers.
+void show_readings(MachineView& view, const Scan& scan, const AlarmRules& rules) {
+  const auto constant = [&rules](std::size_t point) {
+    return point < rules.device_of_point.size() && rules.device_of_point[point].empty();
+  };
   for (std::size_t i = 0; i < view.points.size() && i < scan.readings.size(); ++i) {
     view.points[i].reading = scan.readings[i];
-    if (scan.readings[i].quality == Quality::good) {
+    if (scan.readings[i].quality == Quality::good && !constant(i)) {
       view.last_read = scan.time;
     }
   }
@@ -87,7 +91,7 @@ void refresh(PlantView& view, std::size_t machine, const Pipeline& pipeline) {
   shown.findings = open_findings(state.health);
   shown.run_time = state.operation.run_time;
   shown.starts = state.operation.starts_seen;
-  show_readings(shown, pipeline.last_scan(machine));
+  show_readings(shown, pipeline.last_scan(machine), model.alarms);
   show_alarms(view, pipeline);
   ++view.revision;
 }

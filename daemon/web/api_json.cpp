@@ -200,7 +200,9 @@ std::string health_json(const PlantView& view) {
       std::count_if(view.machines.begin(), view.machines.end(),
                     [&view](const MachineView& machine) { return is_read(machine, view.time); });
   JsonWriter json;
-  json.begin_object().member("status", "ok").member("time", iso_text(view.time));
+  const bool all = static_cast<std::size_t>(read) == view.machines.size();
+  json.begin_object().member("status", all ? "ok" : "not_all_read");
+  json.member("time", iso_text(view.time));
   json.member("machines", view.machines.size()).member("machines_read", read).end_object();
   return json.take();
 }

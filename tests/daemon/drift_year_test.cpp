@@ -43,8 +43,16 @@ PlantOptions plant_with(std::string_view fault) {
 class Season {
  public:
   Season(const PlantOptions& options, PlantMachine machine)
-      : plant_{options}, machine_{machine}, model_{step_model(minutely(machine), AlarmRules{})} {
+      : Season{options, machine, minutely(machine)} {}
+  Season(const PlantOptions& options, PlantMachine machine, MachineModel model)
+      : plant_{options}, machine_{machine}, model_{step_model(std::move(model), AlarmRules{})} {
     state_ = fitted(model_, MachineState{});
+  }
+
+  static MachineModel minutely(PlantMachine machine) {
+    MachineModel model = plant_machine_model(machine);
+    model.scan_period = 60s;
+    return model;
   }
 
   void run_until(Instant end) {
@@ -52,6 +60,10 @@ class Season {
       plant_.step(60s - plant_.time().time_since_epoch() % 60s);
       MachineStep step = advance(model_, std::move(state_), plant_scan(plant_, machine_));
       state_ = std::move(step.next);
+      const auto& power = step.assessment.values[Quantity::power];
+      if (power && plant_.time() > fault_begins) {
+        energy_J_ += power->value * 60.0;
+      }
       for (const Finding& finding : step.findings) {
         findings_.push_back(finding);
       }
@@ -65,6 +77,8 @@ class Season {
   void restart() { state_ = load(model_, save(state_)).value(); }
 
   [[nodiscard]] std::vector<std::uint8_t> bytes() const { return save(state_); }
+  // Since the fault begins, all hours.
+  [[nodiscard]] double energy_J() const { return energy_J_; }
   [[nodiscard]] const std::vector<AlarmEvent>& alarms() const { return alarms_; }
   // Of that kind, as it was when it was first confirmed; none: never.
   [[nodiscard]] std::optional<Finding> confirmed(FindingKind kind) const {
@@ -78,18 +92,13 @@ class Season {
   [[nodiscard]] const std::vector<Finding>& findings() const { return findings_; }
 
  private:
-  static MachineModel minutely(PlantMachine machine) {
-    MachineModel model = plant_machine_model(machine);
-    model.scan_period = 60s;
-    return model;
-  }
-
   Plant plant_;
   PlantMachine machine_;
   StepModel model_;
   MachineState state_;
   std::vector<Finding> findings_;
   std::vector<AlarmEvent> alarms_;
+  double energy_J_ = 0.0;
 };
 
 auto of_kind(AlarmKind kind) {
@@ -130,6 +139,17 @@ TEST_F(Fouling, HasAnOnsetIntervalThatHoldsTheTruth) {
   const Finding& last = season->findings().back();
   EXPECT_LE(last.onset.earliest, fault_begins);
   EXPECT_GE(last.onset.latest, fault_begins);
+}
+
+// Second route: the same plant, weather and loads without the fault.
+TEST_F(Fouling, CostsWhatATwinWithoutItSaves) {
+  Season twin{plant_with(""), PlantMachine::chiller};
+  twin.run_until(fault_begins + days{40 + 14});
+  const double extra_J = season->energy_J() - twin.energy_J();
+  const Finding& last = season->findings().back();
+  EXPECT_NEAR(last.extra_energy_J.value, extra_J, 2.0 * last.extra_energy_J.u);
+  // An interval that holds everything would tell nothing.
+  EXPECT_LT(last.extra_energy_J.u, 0.5 * extra_J);
 }
 
 TEST_F(Fouling, IsNotCalledASensor) {
@@ -208,6 +228,18 @@ TEST(ASensorThatIsWrongFromTheStart, IsCaughtByTheLawsBeforeAnythingIsLearned) {
   ASSERT_TRUE(found);
   EXPECT_THAT(found->suspect_sensors, Contains(Role::hot_out_temperature));
   EXPECT_THAT(season.alarms(), Contains(of_kind(AlarmKind::sensor_suspect)));
+}
+
+TEST(TwoSwappedSensors, AreCaughtByTheLaws) {
+  MachineModel model = Season::minutely(PlantMachine::chiller);
+  std::swap(model.points.at(*model.index_of(Role::cold_in_temperature)).role,
+            model.points.at(*model.index_of(Role::cold_out_temperature)).role);
+  Season season{plant_with(""), PlantMachine::chiller, model};
+  season.run_until(season_start + days{5});
+  const auto found = season.confirmed(FindingKind::law_broken);
+  ASSERT_TRUE(found);
+  EXPECT_THAT(found->suspect_sensors, ::testing::UnorderedElementsAre(Role::cold_in_temperature,
+                                                                      Role::cold_out_temperature));
 }
 
 TEST(ARestart, InTheMiddleChangesNoLaterResult) {

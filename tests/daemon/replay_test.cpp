@@ -233,6 +233,17 @@ TEST(Replay, AnEmptyFieldIsAMissingQuantityWithItsReason) {
   EXPECT_THAT(row.at("reasons"), HasSubstr("cold_in_degC:"));
 }
 
+// small_plant has the default period of ten seconds.
+TEST(Replay, SaysThatTheRowsAreNotAsFarApartAsTheScans) {
+  const TestFolder folder;
+  const Outcome outcome = replayed(
+      {"--config", folder.file("plant.toml", small_plant), "--input",
+       folder.file("h.csv",
+                   "time,t_in,t_out\n2026-01-01T00:00:00Z,12,7\n2026-01-01T00:01:00Z,12,7\n")});
+  EXPECT_EQ(outcome.code, 0);
+  EXPECT_THAT(outcome.err, HasSubstr("the rows are 60 s apart, but m has scan_s = 10"));
+}
+
 struct BadHistory {
   const char* name;
   const char* text;
