@@ -214,9 +214,12 @@ void add_safety_limit(const SafetyLimitEntry& entry, PlantConfig& plant, Problem
            "each kind only once for a machine");
     return;
   }
+  std::ostringstream entered;
+  entered << entry.limit << ' ' << entry.unit;
   machine->limits.push_back({.kind = kind,
                              .machine = entry.machine,
                              .limit_SI = to_SI(*unit, entry.limit, plant.wiring.altitude_m),
+                             .entered = entered.str(),
                              .document = entry.document,
                              .jurisdiction = entry.jurisdiction,
                              .entered_by = entry.entered_by.value_or("")});

@@ -20,6 +20,7 @@ struct SafetyLimit {
   SafetyKind kind{};
   std::string machine;       // MachineModel::id
   double limit_SI = 0.0;     // > 0
+  std::string entered;       // as in the plant file: "16 bar_gauge"; may be empty
   std::string document;      // where the owner took it from; not empty
   std::string jurisdiction;  // the local code that it defers to; not empty
   std::string entered_by;    // may be empty

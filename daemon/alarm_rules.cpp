@@ -42,6 +42,9 @@ SafetyRule rule_of(const MachineModel& model, const AlarmRules& rules, SafetyKin
   if (const SafetyLimit* limit = limit_of(rules, kind)) {
     rule.configured = true;
     rule.setting = setting_text(kind, limit->limit_SI);
+    if (!limit->entered.empty()) {
+      rule.setting += ", entered as " + limit->entered;
+    }
     rule.document = limit->document;
     rule.jurisdiction = limit->jurisdiction;
   }
@@ -57,7 +60,7 @@ SafetyRule lost_rule(const MachineModel& model, const AlarmRules& rules) {
     if (const SafetyLimit* limit = limit_of(rules, kind)) {
       rule.configured = true;
       rule.setting = "2 scans";
-      rule.document = limit->document;
+      rule.document = "this program: a detector that is entered has to be seen";
       rule.jurisdiction = limit->jurisdiction;
     }
   }

@@ -23,6 +23,7 @@ SafetyLimit limit_of(SafetyKind kind, double limit_SI) {
   return {.kind = kind,
           .machine = "chiller-1",
           .limit_SI = limit_SI,
+          .entered = {},
           .document = "manual",
           .jurisdiction = "EN 378",
           .entered_by = {}};

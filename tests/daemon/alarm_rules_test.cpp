@@ -42,6 +42,7 @@ TEST(SafetyRules, ShowsTheSetPointWithItsDocumentAndCode) {
       {.kind = SafetyKind::high_pressure,
        .machine = "chiller-1",
        .limit_SI = 18e5,
+       .entered = "17 bar_gauge",
        .document = "name plate",
        .jurisdiction = "EN 378",
        .entered_by = {}}
@@ -49,7 +50,7 @@ TEST(SafetyRules, ShowsTheSetPointWithItsDocumentAndCode) {
   const auto r = rule(safety_rules(machine(), entered), AlarmKind::high_pressure);
   EXPECT_TRUE(r.configured);
   EXPECT_TRUE(r.has_point);
-  EXPECT_EQ(r.setting, "18.00 bar (absolute)");
+  EXPECT_EQ(r.setting, "18.00 bar (absolute), entered as 17 bar_gauge");
   EXPECT_EQ(r.document, "name plate");
   EXPECT_EQ(r.jurisdiction, "EN 378");
   EXPECT_THAT(r.text, HasSubstr("safety devices remain the protection"));
@@ -61,6 +62,7 @@ TEST(SafetyRules, SaysThatTheMachineHasNoSensorForARule) {
       {.kind = SafetyKind::oxygen,
        .machine = "chiller-1",
        .limit_SI = 0.195,
+       .entered = {},
        .document = "room's data sheet",
        .jurisdiction = "local code",
        .entered_by = {}}
@@ -77,6 +79,7 @@ TEST(SafetyRules, WatchesForLostDetectorsOnceADetectorHasASetPoint) {
       {.kind = SafetyKind::refrigerant_detector,
        .machine = "chiller-1",
        .limit_SI = 500e-6,
+       .entered = {},
        .document = "detector's manual",
        .jurisdiction = "local code",
        .entered_by = {}}

@@ -28,6 +28,7 @@ SafetyLimit limit_of(SafetyKind kind, double limit_SI) {
   return {.kind = kind,
           .machine = "chiller-1",
           .limit_SI = limit_SI,
+          .entered = {},
           .document = "Operating manual of 2019, p. 12",
           .jurisdiction = "EN 378",
           .entered_by = "plant manager"};

@@ -21,6 +21,7 @@ AlarmRules rules_of(const TestMachine& machine) {
       {.kind = SafetyKind::high_pressure,
        .machine = machine.model.id,
        .limit_SI = machine.values.at(Role::discharge_pressure) / 0.9 * 1.002,
+       .entered = {},
        .document = "name plate",
        .jurisdiction = "EN 378",
        .entered_by = {}}
