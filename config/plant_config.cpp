@@ -1,5 +1,7 @@
 #include "config/plant_config.h"
 
+#include "config/listen_address.h"
+#include "config/pairs.h"
 #include "config/point_entry.h"
 #include "thermo/fluids/fluid.h"
 
@@ -21,20 +23,12 @@ Span milliseconds(double ms) {
   return Span{std::llround(ms)};
 }
 
-void refuse(Problems& problems, std::uint32_t line, std::string key, std::string found,
-            std::string allowed) {
-  problems.push_back({.line = line,
-                      .key = std::move(key),
-                      .found = std::move(found),
-                      .allowed = std::move(allowed)});
-}
-
 template <class Entries>
-void refuse_doubles(const Entries& entries, std::string_view table, Problems& problems) {
-  std::set<std::string> seen;
+void refuse_doubles(const Entries& entries, Problems& problems) {
+  std::set<std::string_view> seen;
   for (const auto& entry : entries) {
     if (!seen.insert(entry.id).second) {
-      refuse(problems, entry.line, std::string{table} + ".id", entry.id, "each id only once");
+      refuse(problems, entry.place, "id", "each id only once");
     }
   }
 }
@@ -74,18 +68,25 @@ BusOptions bus_options(const BusEntry& entry, Problems& problems) {
                   .stop_bits = static_cast<int>(entry.stop_bits)};
     return out;
   }
-  const auto endpoint = tcp_endpoint(entry.address);
-  if (endpoint) {
+  if (const auto endpoint = tcp_endpoint(entry.address)) {
     out.tcp = *endpoint;
-  } else {
-    refuse(problems, entry.line, "bus.address", entry.address, endpoint.error());
+  } else if (entry.place.sound("kind")) {
+    refuse(problems, entry.place, "address", endpoint.error());
   }
   return out;
 }
 
+// What the reader's ranges let through and the bus would refuse.
+void check_bus(const BusEntry& entry, const BusOptions& bus, Problems& problems) {
+  const auto fault = fault_of(bus);
+  if (fault && entry.place.sound("address")) {
+    refuse(problems, entry.place, bus.kind == BusKind::rtu ? "baud" : "kind", *fault);
+  }
+}
+
 DeviceOptions device_options(const DeviceEntry& entry, const PlantFile& file, Problems& problems) {
-  if (!has_id(file.buses, entry.bus)) {
-    refuse(problems, entry.line, "device.bus", entry.bus, ids_of(file.buses));
+  if (!has_id(file.buses, entry.bus) && !may_mean(file, "bus", file.buses)) {
+    refuse(problems, entry.place, "bus", ids_of(file.buses));
   }
   DeviceOptions out;
   out.id = entry.id;
@@ -122,7 +123,7 @@ MachineConfig machine_config(const MachineEntry& entry, Problems& problems) {
   model.evaporator = entry.evaporator == "flooded" ? EvaporatorKind::flooded : EvaporatorKind::dry;
   model.refrigerant = fluid_named(entry.refrigerant);
   if (model.refrigerant == nullptr) {
-    refuse(problems, entry.line, "machine.refrigerant", entry.refrigerant, fluid_names());
+    refuse(problems, entry.place, "refrigerant", fluid_names());
   }
   model.cold = model_stream(entry.cold_stream);
   model.hot = model_stream(entry.hot_stream);
@@ -136,40 +137,58 @@ MachineConfig machine_config(const MachineEntry& entry, Problems& problems) {
   return out;
 }
 
-// Adds the points of one machine to its model and to the wiring.
-void add_points(MachineConfig& machine, const PlantFile& file, Wiring& wiring, Problems& problems) {
-  std::set<Role> roles;
+void refuse_double_roles(const PlantFile& file, Problems& problems) {
+  std::set<std::pair<std::string_view, Role>> seen;
   for (const PointEntry& entry : file.points) {
-    if (entry.machine != machine.model.id) {
+    const auto role = role_named(entry.role);
+    if (role && has_id(file.machines, entry.machine) &&
+        !seen.insert({entry.machine, *role}).second) {
+      refuse(problems, entry.place, "role", "each role of a machine only once");
+    }
+  }
+}
+
+struct ReadPoints {
+  std::vector<std::optional<PointSpec>> specs;  // of each point of the file, in its order
+  std::vector<PairShare> shares;
+};
+
+ReadPoints read_points(const PlantFile& file, const Wiring& wiring, Problems& problems) {
+  ReadPoints out;
+  for (const PointEntry& entry : file.points) {
+    if (!has_id(file.machines, entry.machine) && !may_mean(file, "machine", file.machines)) {
+      refuse(problems, entry.place, "machine", ids_of(file.machines));
+    }
+    out.specs.push_back(point_spec(entry, file, wiring, problems));
+  }
+  refuse_double_roles(file, problems);
+  out.shares = pair_shares(file, out.specs, problems);
+  return out;
+}
+
+// Adds the points of one machine to its model and to the wiring.
+void add_points(MachineConfig& machine, const PlantFile& file, const ReadPoints& points,
+                Wiring& wiring) {
+  for (std::size_t i = 0; i < file.points.size(); ++i) {
+    const PointEntry& entry = file.points[i];
+    if (entry.machine != machine.model.id || !points.specs[i]) {
       continue;
     }
-    const auto spec = point_spec(entry, wiring, problems);
-    if (!spec) {
-      continue;
-    }
-    if (!roles.insert(spec->role).second) {
-      refuse(problems, entry.line, "point.role", entry.role, "each role of a machine only once");
-    }
-    ModelPoint point{.id = entry.id,
-                     .role = spec->role,
-                     .circuit = spec->circuit,
-                     .mass_flow = spec->unit == Unit::kg_s,
-                     .pair = {},
-                     .accuracy_known = !entry.accuracy.empty(),
-                     .shared_variance = 0.0};
-    if (entry.pair) {
-      const PairShare share = pair_share(entry, *spec, file, problems);
-      point.pair = share.pair;
-      point.shared_variance = share.variance;
-    }
-    if (entry.at == "out" && spec->role == Role::cold_flow) {
+    const PointSpec& spec = *points.specs[i];
+    if (entry.at == "out" && spec.role == Role::cold_flow) {
       machine.model.cold.flow_at = FlowPlace::out;
     }
-    if (entry.at == "out" && spec->role == Role::hot_flow) {
+    if (entry.at == "out" && spec.role == Role::hot_flow) {
       machine.model.hot.flow_at = FlowPlace::out;
     }
-    machine.model.points.push_back(std::move(point));
-    wiring.points.push_back(*spec);
+    machine.model.points.push_back({.id = entry.id,
+                                    .role = spec.role,
+                                    .circuit = spec.circuit,
+                                    .mass_flow = spec.unit == Unit::kg_s,
+                                    .pair = points.shares[i].pair,
+                                    .accuracy_known = !entry.accuracy.empty(),
+                                    .shared_variance = points.shares[i].variance});
+    wiring.points.push_back(spec);
   }
 }
 
@@ -193,62 +212,61 @@ Role role_like(const std::string& kind) {
   }
 }
 
-void add_safety_limit(const SafetyLimitEntry& entry, PlantConfig& plant, Problems& problems) {
+void add_safety_limit(const SafetyLimitEntry& entry, const PlantFile& file, PlantConfig& plant,
+                      Problems& problems) {
+  const auto unit = unit_named(entry.unit);
+  if (!unit || (entry.place.sound("kind") && !allowed(*unit, role_like(entry.kind)))) {
+    refuse(problems, entry.place, "unit", "a unit that fits kind \"" + entry.kind + '"');
+  }
   const auto machine =
       std::find_if(plant.machines.begin(), plant.machines.end(),
                    [&entry](const MachineConfig& m) { return m.model.id == entry.machine; });
-  const auto unit = unit_named(entry.unit);
-  if (!unit || !allowed(*unit, role_like(entry.kind))) {
-    refuse(problems, entry.line, "safety_limit.unit", entry.unit,
-           "a unit that fits kind \"" + entry.kind + '"');
-    return;
-  }
   if (machine == plant.machines.end()) {
-    refuse(problems, entry.line, "safety_limit.machine", entry.machine, "the id of a machine");
+    if (!may_mean(file, "machine", file.machines)) {
+      refuse(problems, entry.place, "machine", ids_of(file.machines));
+    }
     return;
   }
   const SafetyKind kind = safety_kind(entry.kind);
-  if (std::any_of(machine->limits.begin(), machine->limits.end(),
+  if (entry.place.sound("kind") &&
+      std::any_of(machine->limits.begin(), machine->limits.end(),
                   [kind](const SafetyLimit& l) { return l.kind == kind; })) {
-    refuse(problems, entry.line, "safety_limit.kind", entry.kind,
-           "each kind only once for a machine");
-    return;
+    refuse(problems, entry.place, "kind", "each kind only once for a machine");
   }
   std::ostringstream entered;
   entered << entry.limit << ' ' << entry.unit;
-  machine->limits.push_back({.kind = kind,
-                             .machine = entry.machine,
-                             .limit_SI = to_SI(*unit, entry.limit, plant.wiring.altitude_m),
-                             .entered = entered.str(),
-                             .document = entry.document,
-                             .jurisdiction = entry.jurisdiction,
-                             .entered_by = entry.entered_by.value_or("")});
+  machine->limits.push_back(
+      {.kind = kind,
+       .machine = entry.machine,
+       .limit_SI = unit ? to_SI(*unit, entry.limit, plant.wiring.altitude_m) : 0.0,
+       .entered = entered.str(),
+       .document = entry.document,
+       .jurisdiction = entry.jurisdiction,
+       .entered_by = entry.entered_by.value_or("")});
 }
 
 void check_names(const PlantFile& file, Problems& problems) {
-  refuse_doubles(file.buses, "bus", problems);
-  refuse_doubles(file.devices, "device", problems);
-  refuse_doubles(file.machines, "machine", problems);
-  refuse_doubles(file.pairs, "pair", problems);
-  refuse_doubles(file.points, "point", problems);
-  if (file.machines.empty()) {
-    refuse(problems, 0, "[[machine]]", "", "at least one machine is required");
+  refuse_doubles(file.buses, problems);
+  refuse_doubles(file.devices, problems);
+  refuse_doubles(file.machines, problems);
+  refuse_doubles(file.pairs, problems);
+  refuse_doubles(file.points, problems);
+  if (file.machines.empty() && file.place.sound("machine")) {
+    problems.push_back({.line = 0,
+                        .key = "[[machine]]",
+                        .found = {},
+                        .allowed = "at least one machine is required"});
   }
   if (!knows_timezone(file.site.timezone)) {
-    refuse(problems, 0, "site.timezone", file.site.timezone,
-           "an IANA time zone, as \"Europe/London\"");
+    refuse(problems, file.site.place, "timezone", "an IANA time zone, as \"Europe/London\"");
   }
-  for (const PointEntry& point : file.points) {
-    if (!has_id(file.machines, point.machine)) {
-      refuse(problems, point.line, "point.machine", point.machine, ids_of(file.machines));
-    }
+  if (const auto listen = listen_address(file.web.listen); !listen) {
+    refuse(problems, file.web.place, "listen", listen.error());
   }
 }
 
-}  // namespace
-
-tl::expected<PlantConfig, Problems> plant_from(const PlantFile& file) {
-  Problems problems;
+// What the tables mean together: names that must exist, units that fit roles, registers that exist.
+PlantConfig plant_from(const PlantFile& file, Problems& problems) {
   check_names(file, problems);
   PlantConfig plant;
   plant.site = file.site.name;
@@ -260,25 +278,39 @@ tl::expected<PlantConfig, Problems> plant_from(const PlantFile& file) {
   plant.wiring.altitude_m = file.site.altitude_m;
   for (const BusEntry& entry : file.buses) {
     plant.wiring.buses.push_back(bus_options(entry, problems));
+    check_bus(entry, plant.wiring.buses.back(), problems);
   }
   for (const DeviceEntry& entry : file.devices) {
     plant.wiring.devices.push_back(device_options(entry, file, problems));
   }
+  const ReadPoints points = read_points(file, plant.wiring, problems);
   for (const MachineEntry& entry : file.machines) {
     plant.machines.push_back(machine_config(entry, problems));
     MachineConfig& machine = plant.machines.back();
     plant.wiring.machines.push_back({.machine = entry.id, .period = machine.model.scan_period});
-    add_points(machine, file, plant.wiring, problems);
+    add_points(machine, file, points, plant.wiring);
   }
   for (const SafetyLimitEntry& entry : file.safety_limits) {
-    add_safety_limit(entry, plant, problems);
+    add_safety_limit(entry, file, plant, problems);
   }
-  if (problems.empty()) {
-    return plant;
+  return plant;
+}
+
+}  // namespace
+
+tl::expected<PlantConfig, Problems> read_plant(std::string_view text, std::string_view name) {
+  Problems problems;
+  PlantConfig plant;
+  if (const auto file = read_plant_file(text, name, problems)) {
+    plant = plant_from(*file, problems);
   }
-  std::stable_sort(problems.begin(), problems.end(),
-                   [](const Problem& a, const Problem& b) { return a.line < b.line; });
-  return tl::unexpected{problems};
+  if (!problems.empty()) {
+    std::stable_sort(problems.begin(), problems.end(),
+                     [](const Problem& a, const Problem& b) { return a.line < b.line; });
+    return tl::unexpected{std::move(problems)};
+  }
+  plant.text = text;
+  return plant;
 }
 
 tl::expected<PlantConfig, Problems> load_plant(const std::filesystem::path& path) {
@@ -291,15 +323,12 @@ tl::expected<PlantConfig, Problems> load_plant(const std::filesystem::path& path
                   .found = {},
                   .allowed = "cannot be read: " + std::generic_category().message(errno)}}};
   }
-  return read_plant_file(text.str(), path.string())
-      .and_then(plant_from)
-      .map([&path, &text](PlantConfig plant) {
-        plant.text = text.str();
-        if (plant.database.is_relative()) {
-          plant.database = path.parent_path() / plant.database;
-        }
-        return plant;
-      });
+  return read_plant(text.str(), path.string()).map([&path](PlantConfig plant) {
+    if (plant.database.is_relative()) {
+      plant.database = path.parent_path() / plant.database;
+    }
+    return plant;
+  });
 }
 
 }  // namespace lostwork

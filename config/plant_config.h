@@ -10,6 +10,7 @@
 
 #include <filesystem>
 #include <string>
+#include <string_view>
 #include <vector>
 
 namespace lostwork {
@@ -25,20 +26,18 @@ struct PlantConfig {
   std::string timezone;            // an IANA name that this computer knows
   std::filesystem::path database;  // absolute, or relative to the working folder
   Span commit{60000};              // what a power cut may lose
-  std::string listen;  // "127.0.0.1:8470"; whether it may be listened on is the server's to say
+  std::string listen;              // a loopback address and a port: "127.0.0.1:8470"
   Tariff tariff;
   Wiring wiring;  // points of one machine stand together, in the order of its model's
   std::vector<MachineConfig> machines;
   std::string text;  // the file, as it was read
 };
 
-// Share of its variance that a point of a pair has in common with the other one, where the file
-// does not say how accurate their difference is: engineering judgement, no published figure.
-inline constexpr double default_shared_variance = 0.5;
-
-// Everything that the tables mean together: names that must exist, units that fit roles, registers
-// that exist. All problems at once, in the order of the file.
-[[nodiscard]] tl::expected<PlantConfig, Problems> plant_from(const PlantFile& file);
+// `name` stands in messages only; a relative database stays relative. All problems at once, in the
+// order of the file: what each table says and what they mean together. What is but the consequence
+// of another problem is left out.
+[[nodiscard]] tl::expected<PlantConfig, Problems> read_plant(std::string_view text,
+                                                             std::string_view name);
 
 // From the file's path; a relative database lies beside the file.
 [[nodiscard]] tl::expected<PlantConfig, Problems> load_plant(const std::filesystem::path& path);

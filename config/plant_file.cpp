@@ -62,7 +62,7 @@ std::optional<AccuracyEntry> one_accuracy(const toml::table& table) {
 }
 
 std::vector<AccuracyEntry> take_accuracy(const TomlPlace& place, std::string_view key) {
-  const toml::node* node = place.table.get(key);
+  const toml::node* node = node_of(place.table, key);
   if (node == nullptr) {
     return {};
   }
@@ -91,7 +91,7 @@ std::vector<AccuracyEntry> take_accuracy(const TomlPlace& place, std::string_vie
 
 StreamEntry take_stream(const TomlPlace& place, std::string_view key) {
   StreamEntry out;
-  const toml::node* node = place.table.get(key);
+  const toml::node* node = node_of(place.table, key);
   if (node == nullptr) {
     return out;
   }
@@ -102,8 +102,8 @@ StreamEntry take_stream(const TomlPlace& place, std::string_view key) {
                        false, 1e5, 1e7        },
   };
   if (const toml::table* table = node->as_table()) {
-    const TomlPlace inner{*table, place.where + '.' + std::string{key}, place.problems};
-    return read_by_keys<StreamEntry>(inner, stream_keys);
+    EntryPlace inner{.name = place.entry.name + '.' + std::string{key}};
+    return read_by_keys<StreamEntry>({*table, inner, place.problems}, stream_keys);
   }
   place.refuse(*node, key, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }");
   return out;
@@ -115,13 +115,13 @@ CasingLossEntry take_casing_loss(const TomlPlace& place) {
                            0.5                                                                          },
       Key<CasingLossEntry>{   "limit",    &CasingLossEntry::limit, "how far off it may be", true, 0, 0.5},
   };
-  const toml::node* node = place.table.get("casing_loss");
+  const toml::node* node = node_of(place.table, "casing_loss");
   if (node == nullptr) {
     return {};
   }
   if (const toml::table* table = node->as_table()) {
-    const TomlPlace inner{*table, place.where + ".casing_loss", place.problems};
-    return read_by_keys<CasingLossEntry>(inner, casing_keys);
+    EntryPlace inner{.name = place.entry.name + ".casing_loss"};
+    return read_by_keys<CasingLossEntry>({*table, inner, place.problems}, casing_keys);
   }
   place.refuse(*node, "casing_loss", "{ fraction = 0.05, limit = 0.05 }");
   return {};
@@ -140,7 +140,7 @@ std::vector<std::variant<std::int64_t, double>> numbers_of(const toml::array& ar
 }
 
 std::vector<std::variant<std::int64_t, double>> take_sentinels(const TomlPlace& place) {
-  const toml::node* node = place.table.get("sentinels");
+  const toml::node* node = node_of(place.table, "sentinels");
   if (node == nullptr) {
     return {};
   }
@@ -183,7 +183,7 @@ std::vector<CorrectionEntry> rising_corrections(const toml::array& array) {
 }
 
 std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
-  const toml::node* node = place.table.get("corrections");
+  const toml::node* node = node_of(place.table, "corrections");
   if (node == nullptr) {
     return {};
   }
@@ -200,7 +200,7 @@ std::vector<CorrectionEntry> take_corrections(const TomlPlace& place) {
 }
 
 std::optional<std::array<double, 2>> take_range(const TomlPlace& place) {
-  const toml::node* node = place.table.get("range");
+  const toml::node* node = node_of(place.table, "range");
   if (node == nullptr) {
     return std::nullopt;
   }
@@ -211,12 +211,19 @@ std::optional<std::array<double, 2>> take_range(const TomlPlace& place) {
   return range;
 }
 
+// machine "chiller-1"; machine[2] where it has no id to be called by.
+std::string name_of(const toml::table& table, std::string_view kind, std::size_t number) {
+  const auto id = table["id"].value<std::string>();
+  return id && !id->empty() ? std::string{kind} + " \"" + *id + '"'
+                            : std::string{kind} + '[' + std::to_string(number) + ']';
+}
+
 template <class S>
-S read_one(const TomlPlace& place, std::span<const Key<S>> keys) {
+S read_one(const toml::table& table, std::string name, Problems& problems,
+           std::span<const Key<S>> keys) {
+  EntryPlace entry{.line = table.source().begin.line, .name = std::move(name)};
+  const TomlPlace place{table, entry, problems};
   S out = read_by_keys<S>(place, keys);
-  if constexpr (requires { out.line; }) {
-    out.line = place.table.source().begin.line;
-  }
   if constexpr (std::is_same_v<S, MachineEntry>) {
     out.casing_loss = take_casing_loss(place);
     out.cold_stream = take_stream(place, "cold_stream");
@@ -229,17 +236,21 @@ S read_one(const TomlPlace& place, std::span<const Key<S>> keys) {
     out.corrections = take_corrections(place);
     out.range = take_range(place);
   }
+  if constexpr (requires { out.place; }) {
+    out.place = std::move(entry);
+  }
   return out;
 }
 
 class FileReader {
  public:
-  FileReader(const toml::table& root, Problems& problems) : root_{root}, problems_{problems} {}
+  FileReader(const toml::table& root, EntryPlace& place, Problems& problems)
+      : root_{root}, place_{place}, problems_{problems} {}
 
   template <class S, std::size_t n>
   S table(std::string_view name, const std::array<Key<S>, n>& keys, bool required) {
     known_.push_back(name);
-    const toml::node* node = root_.get(name);
+    const toml::node* node = node_of(root_, name);
     if (node == nullptr) {
       if (required) {
         problems_.push_back({.line = 0,
@@ -250,7 +261,7 @@ class FileReader {
       return {};
     }
     if (const toml::table* found = node->as_table()) {
-      return read_one<S>({*found, std::string{name}, problems_}, keys);
+      return read_one<S>(*found, std::string{name}, problems_, keys);
     }
     refuse(*node, name, '[' + std::string{name} + "] with its keys below it");
     return {};
@@ -260,7 +271,7 @@ class FileReader {
   std::vector<S> tables(std::string_view name, const std::array<Key<S>, n>& keys) {
     known_.push_back(name);
     std::vector<S> out;
-    const toml::node* node = root_.get(name);
+    const toml::node* node = node_of(root_, name);
     if (node == nullptr) {
       return out;
     }
@@ -270,8 +281,8 @@ class FileReader {
       return out;
     }
     for (const toml::node& part : *array) {
-      const std::string where = std::string{name} + '[' + std::to_string(out.size() + 1) + ']';
-      out.push_back(read_one<S>({*part.as_table(), where, problems_}, keys));
+      const toml::table& one = *part.as_table();
+      out.push_back(read_one<S>(one, name_of(one, name, out.size() + 1), problems_, keys));
     }
     return out;
   }
@@ -298,16 +309,18 @@ class FileReader {
                          .key = std::string{key},
                          .found = found_text(node),
                          .allowed = std::move(allowed)});
+    place_.refused.emplace(key);
   }
 
   const toml::table& root_;
+  EntryPlace& place_;
   Problems& problems_;
   std::vector<std::string_view> known_;
 };
 
 PlantFile read_tables(const toml::table& root, Problems& problems) {
-  FileReader reader{root, problems};
   PlantFile file;
+  FileReader reader{root, file.place, problems};
   file.site = reader.table("site", keys::site, true);
   file.storage = reader.table("storage", keys::storage, false);
   file.web = reader.table("web", keys::web, false);
@@ -324,23 +337,17 @@ PlantFile read_tables(const toml::table& root, Problems& problems) {
 
 }  // namespace
 
-tl::expected<PlantFile, Problems> read_plant_file(std::string_view text, std::string_view name) {
-  Problems problems;
+std::optional<PlantFile> read_plant_file(std::string_view text, std::string_view name,
+                                         Problems& problems) {
   try {
-    const toml::table root = toml::parse(text, name);
-    PlantFile file = read_tables(root, problems);
-    if (problems.empty()) {
-      return file;
-    }
+    return read_tables(toml::parse(text, name), problems);
   } catch (const toml::parse_error& error) {
     problems.push_back({.line = error.source().begin.line,
                         .key = "TOML",
                         .found = {},
                         .allowed = std::string{error.description()}});
+    return std::nullopt;
   }
-  std::stable_sort(problems.begin(), problems.end(),
-                   [](const Problem& a, const Problem& b) { return a.line < b.line; });
-  return tl::unexpected{problems};
 }
 
 }  // namespace lostwork

@@ -4,21 +4,25 @@
 // Keys, limits and meanings: plant_keys.h. What the rest of the program works with: plant_config.h.
 #pragma once
 
+#include "config/entry_place.h"
 #include "config/problem.h"
 #include "config/tariff.h"
 #include "thermo/result.h"
 
+#include <algorithm>
 #include <array>
 #include <chrono>
 #include <cstdint>
 #include <optional>
 #include <string>
+#include <string_view>
 #include <variant>
 #include <vector>
 
 namespace lostwork {
 
 struct SiteEntry {
+  EntryPlace place;
   std::string name;
   double altitude_m = 0.0;
   std::string timezone = "UTC";
@@ -30,11 +34,12 @@ struct StorageEntry {
 };
 
 struct WebEntry {
+  EntryPlace place;
   std::string listen = "127.0.0.1:8470";
 };
 
 struct BusEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string id;
   std::string kind = "tcp";
   std::string address;
@@ -46,7 +51,7 @@ struct BusEntry {
 };
 
 struct DeviceEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string id;
   std::string bus;
   std::int64_t unit = 1;
@@ -66,7 +71,7 @@ struct CasingLossEntry {
 };
 
 struct MachineEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string id;
   std::string name;
   std::string duty = "cooling";
@@ -93,7 +98,7 @@ struct AccuracyEntry {
 };
 
 struct PairEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string id;
   std::vector<AccuracyEntry> difference;
 };
@@ -104,7 +109,7 @@ struct CorrectionEntry {
 };
 
 struct PointEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string id;
   std::string machine;
   std::int64_t circuit = 1;
@@ -127,7 +132,7 @@ struct PointEntry {
 };
 
 struct SafetyLimitEntry {
-  std::uint32_t line = 0;
+  EntryPlace place;
   std::string machine;
   std::string kind;
   double limit = 0.0;
@@ -138,6 +143,7 @@ struct SafetyLimitEntry {
 };
 
 struct PlantFile {
+  EntryPlace place;  // its keys are the tables
   SiteEntry site;
   StorageEntry storage;
   WebEntry web;
@@ -150,8 +156,18 @@ struct PlantFile {
   std::vector<SafetyLimitEntry> safety_limits;
 };
 
-// `name` stands in messages only. All problems of the text at once; a text that is no TOML has one.
-[[nodiscard]] tl::expected<PlantFile, Problems> read_plant_file(std::string_view text,
-                                                                std::string_view name);
+// Whether an id that none of the entries has may still be that of one whose own id was refused:
+// then nothing can be said about it.
+template <class Entries>
+[[nodiscard]] bool may_mean(const PlantFile& file, std::string_view table, const Entries& entries) {
+  return !file.place.sound(table) ||
+         std::any_of(entries.begin(), entries.end(),
+                     [](const auto& entry) { return !entry.place.sound("id"); });
+}
+
+// `name` stands in messages only. Notes every problem of the text; what is refused keeps its
+// default and is marked in its entry's place. Empty: the text is no TOML, which is one problem.
+[[nodiscard]] std::optional<PlantFile> read_plant_file(std::string_view text, std::string_view name,
+                                                       Problems& problems);
 
 }  // namespace lostwork

@@ -115,7 +115,8 @@ inline constexpr std::array point{
     Key<PointEntry>{
                     "accuracy",                      Other{},
                     "one or several of { class = \"Pt100 A\" }, { limit = X }, { percent_of_reading = X }, "
-                    "{ percent_of_span = X, span = [a, b] }, { u = X }; a limit is rectangular"      },
+                    "{ percent_of_span = X, span = [a, b] }, { u = X }; a limit is rectangular; "
+                    "several parts are independent errors, whose squares add"      },
     Key<PointEntry>{       "pair",            &PointEntry::pair,
                     "points of one pair share the common part of their error"      },
     Key<PointEntry>{     "device",          &PointEntry::device,

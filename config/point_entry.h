@@ -6,22 +6,23 @@
 #include "sensors/point.h"
 #include "sensors/wiring.h"
 
-#include <cstddef>
 #include <optional>
+#include <string_view>
+#include <vector>
 
 namespace lostwork {
 
-// Notes every problem of the entry; none where there is one. Looks for its device in the wiring.
-[[nodiscard]] std::optional<PointSpec> point_spec(const PointEntry& entry, const Wiring& wiring,
-                                                  Problems& problems);
+// The role and the unit of an entry, where they are known and fit each other.
+[[nodiscard]] std::optional<Unit> unit_of(const PointEntry& entry);
 
-struct PairShare {
-  std::size_t pair;  // index of the pair's name among all that the file's points use
-  double variance;   // share of u^2 that its points have in common, 0..1
-};
-// For an entry that names a pair. Notes a pair that has not two points of one dimension, or a
-// difference that would be less accurate than two sensors on their own.
-[[nodiscard]] PairShare pair_share(const PointEntry& entry, const PointSpec& spec,
-                                   const PlantFile& file, Problems& problems);
+// The parts of the accuracy that stands at `key` of `place`.
+[[nodiscard]] std::vector<Accuracy> accuracies(const std::vector<AccuracyEntry>& entries, Unit unit,
+                                               const EntryPlace& place, std::string_view key,
+                                               Problems& problems);
+
+// Notes every problem of the entry; none where there is one. Its device is one of the file's, at
+// the same place in the wiring.
+[[nodiscard]] std::optional<PointSpec> point_spec(const PointEntry& entry, const PlantFile& file,
+                                                  const Wiring& wiring, Problems& problems);
 
 }  // namespace lostwork

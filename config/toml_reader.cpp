@@ -1,5 +1,7 @@
 #include "config/toml_reader.h"
 
+#include "config/near_name.h"
+
 #include <array>
 #include <charconv>
 #include <sstream>
@@ -47,18 +49,32 @@ std::string allowed_choices(std::span<const std::string_view> choices) {
   return out;
 }
 
+const toml::node* node_of(const toml::table& table, std::string_view key) {
+  if (const toml::node* node = table.get(key)) {
+    return node;
+  }
+  for (const auto& [written, node] : table) {
+    if (is_slip_of(written.str(), key)) {
+      return &node;
+    }
+  }
+  return nullptr;
+}
+
 void TomlPlace::refuse(const toml::node& node, std::string_view key, std::string allowed) const {
   problems.push_back({.line = line_of(node),
-                      .key = where + '.' + std::string{key},
+                      .key = entry.name + '.' + std::string{key},
                       .found = found_text(node),
                       .allowed = std::move(allowed)});
+  entry.refused.emplace(key);
 }
 
 void TomlPlace::missing(std::string_view key, std::string allowed) const {
   problems.push_back({.line = table.source().begin.line,
-                      .key = where + '.' + std::string{key},
+                      .key = entry.name + '.' + std::string{key},
                       .found = {},
                       .allowed = "is required: " + std::move(allowed)});
+  entry.refused.emplace(key);
 }
 
 void take(const TomlPlace& place, std::string_view key, const toml::node& node, std::string& out,

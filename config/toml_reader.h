@@ -1,6 +1,7 @@
 // Reads tables of a TOML file by their key tables, and remembers every problem.
 #pragma once
 
+#include "config/entry_place.h"
 #include "config/key_table.h"
 #include "config/problem.h"
 
@@ -18,12 +19,16 @@ namespace lostwork {
 [[nodiscard]] std::string allowed_choices(std::span<const std::string_view> choices);
 [[nodiscard]] std::uint32_t line_of(const toml::node& node);
 
-// One table of the file, with its place for messages ("machine[1]").
+// The value of a key; where it is not written, that of a key that looks like it, mistyped.
+[[nodiscard]] const toml::node* node_of(const toml::table& table, std::string_view key);
+
+// One table of the file.
 struct TomlPlace {
   const toml::table& table;
-  std::string where;
+  EntryPlace& entry;
   Problems& problems;
 
+  // Both note the problem and mark the key in the entry.
   void refuse(const toml::node& node, std::string_view key, std::string allowed) const;
   void missing(std::string_view key, std::string allowed) const;
 };
@@ -77,22 +82,23 @@ template <class S>
 }
 
 // Fills S from its table: unknown keys, wrong types, values out of range and missing required keys
-// are problems.
+// are problems. A mistyped key is unknown, and is then read as the one that is meant.
 template <class S>
 [[nodiscard]] S read_by_keys(const TomlPlace& place, std::span<const Key<S>> keys) {
   S out{};
   for (const auto& [written, node] : place.table) {
     const std::string_view name = written.str();
-    const auto key =
-        std::find_if(keys.begin(), keys.end(), [name](const Key<S>& k) { return k.name == name; });
-    if (key == keys.end()) {
+    if (std::none_of(keys.begin(), keys.end(),
+                     [name](const Key<S>& key) { return key.name == name; })) {
       place.refuse(node, name, "no such key; known here: " + names_of(keys));
-      continue;
     }
-    take_member(place, *key, node, out);
   }
   for (const Key<S>& key : keys) {
-    if (key.required && !place.table.contains(key.name)) {
+    if (const toml::node* node = node_of(place.table, key.name)) {
+      place.entry.written.emplace(key.name,
+                                  WrittenKey{.line = line_of(*node), .text = found_text(*node)});
+      take_member(place, key, *node, out);
+    } else if (key.required) {
       place.missing(key.name, std::string{key.meaning});
     }
   }

@@ -94,13 +94,45 @@ void print_machine(const MachineConfig& machine, const Requirements& r, std::ost
   print_sensors(r.sensors, out);
 }
 
+std::string counted(std::size_t number, std::string_view what) {
+  return std::to_string(number) + ' ' + std::string{what} + (number == 1 ? "" : "s");
+}
+
+// Whether two points are read from one register; it can be deliberate.
+bool share_a_register(const PointSpec& a, const PointSpec& b) {
+  const auto* at = std::get_if<FromRegister>(&a.source);
+  const auto* other = std::get_if<FromRegister>(&b.source);
+  return at != nullptr && other != nullptr && at->device == other->device &&
+         at->at.table == other->at.table &&
+         at->at.address < other->at.address + word_count(other->at.type) &&
+         other->at.address < at->at.address + word_count(at->at.type);
+}
+
+void print_shared_registers(const std::vector<PointSpec>& points, std::ostream& out) {
+  for (std::size_t i = 0; i < points.size(); ++i) {
+    for (std::size_t k = i + 1; k < points.size(); ++k) {
+      if (share_a_register(points[i], points[k])) {
+        out << "note: points " << points[i].id << " and " << points[k].id
+            << " read the same register of device "
+            << std::get<FromRegister>(points[i].source).device << '\n';
+      }
+    }
+  }
+}
+
 void print_warnings(const PlantConfig& plant, std::ostream& out) {
   for (const PointSpec& point : plant.wiring.points) {
     if (point.accuracies.empty() && dimension(point.role) != Dimension::state) {
       out << "note: point " << point.id
           << " has no accuracy: its uncertainty counts as that of its digits alone\n";
     }
+    if (point.accuracies.size() > 1) {
+      out << "note: point " << point.id << " has an accuracy of "
+          << counted(point.accuracies.size(), "part")
+          << ": they count as independent errors, whose squares add\n";
+    }
   }
+  print_shared_registers(plant.wiring.points, out);
 }
 
 // Whether every machine can be assessed (level L1 or more).
@@ -158,8 +190,8 @@ int check_command(std::span<const std::string_view> arguments, std::ostream& out
     tell(err, std::string{*file}, plant.error());
     return 2;
   }
-  out << *file << ": good; " << plant->machines.size() << " machines, "
-      << plant->wiring.points.size() << " points\n";
+  out << *file << ": good; " << counted(plant->machines.size(), "machine") << ", "
+      << counted(plant->wiring.points.size(), "point") << '\n';
   print_warnings(*plant, out);
   bool well = print_machines(*plant, out);
   print_safety(*plant, out);

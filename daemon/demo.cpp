@@ -163,7 +163,7 @@ class TemporaryFolder {
 };
 
 PlantConfig demo_config(const DemoOptions& demo, const std::filesystem::path& database) {
-  auto config = read_plant_file(demo_plant_file(), "tern_quay_dairy.toml").and_then(plant_from);
+  auto config = read_plant(demo_plant_file(), "tern_quay_dairy.toml");
   if (!config) {
     throw std::logic_error{text("tern_quay_dairy.toml", config.error().front())};
   }

@@ -250,32 +250,6 @@ class ModbusBus final : public Bus {
   std::bitset<256> unsure_;          // RTU: units whose next answer may be a late one
 };
 
-constexpr std::array bauds{1200, 2400, 4800, 9600, 19200, 38400, 57600, 115200};
-
-std::optional<std::string> fault_of_line(const SerialLine& line) {
-  if (line.device.empty()) {
-    return "the serial line has no device: write one such as /dev/ttyUSB0";
-  }
-  if (std::find(bauds.begin(), bauds.end(), line.baud) == bauds.end()) {
-    return sentence({"baud ", std::to_string(line.baud),
-                     ": 1200, 2400, 4800, 9600, 19200, 38400, 57600 or 115200"});
-  }
-  if (line.stop_bits != 1 && line.stop_bits != 2) {
-    return sentence({"stop bits ", std::to_string(line.stop_bits), ": 1 or 2"});
-  }
-  return std::nullopt;
-}
-
-std::optional<std::string> fault_of_options(const BusOptions& options) {
-  if (options.kind == BusKind::rtu_over_tcp) {
-    return "kind rtu_over_tcp is not supported yet: set the gateway to Modbus TCP and use tcp";
-  }
-  if (options.timeout < Span{1} || options.timeout > Span{60000}) {
-    return sentence({"timeout ", std::to_string(options.timeout.count()), " ms: 1 to 60000 ms"});
-  }
-  return options.kind == BusKind::rtu ? fault_of_line(options.serial) : std::nullopt;
-}
-
 Context context_for(const BusOptions& options) {
   if (options.kind == BusKind::rtu) {
     const SerialLine& line = options.serial;
@@ -294,7 +268,7 @@ Context context_for(const BusOptions& options) {
 
 tl::expected<std::unique_ptr<Bus>, std::string> modbus_bus(const BusOptions& options,
                                                            BusClocks clocks) {
-  if (const auto fault = fault_of_options(options)) {
+  if (const auto fault = fault_of(options)) {
     return tl::unexpected{sentence({"bus ", options.id, ": ", *fault})};
   }
   Context context = context_for(options);

@@ -50,6 +50,22 @@ std::optional<std::uint16_t> port_number(std::string_view text) {
   return port;
 }
 
+constexpr std::array bauds{1200, 2400, 4800, 9600, 19200, 38400, 57600, 115200};
+
+std::optional<std::string> fault_of_line(const SerialLine& line) {
+  if (line.device.empty()) {
+    return "the serial line has no device: write one such as /dev/ttyUSB0";
+  }
+  if (std::find(bauds.begin(), bauds.end(), line.baud) == bauds.end()) {
+    return sentence({"baud ", std::to_string(line.baud),
+                     ": 1200, 2400, 4800, 9600, 19200, 38400, 57600 or 115200"});
+  }
+  if (line.stop_bits != 1 && line.stop_bits != 2) {
+    return sentence({"stop bits ", std::to_string(line.stop_bits), ": 1 or 2"});
+  }
+  return std::nullopt;
+}
+
 }  // namespace
 
 std::string_view name(BusKind kind) {
@@ -83,6 +99,16 @@ tl::expected<TcpEndpoint, std::string> tcp_endpoint(std::string_view text) {
     endpoint.port = *port;
   }
   return endpoint;
+}
+
+std::optional<std::string> fault_of(const BusOptions& options) {
+  if (options.kind == BusKind::rtu_over_tcp) {
+    return "kind rtu_over_tcp is not supported yet: set the gateway to Modbus TCP and use tcp";
+  }
+  if (options.timeout < Span{1} || options.timeout > Span{60000}) {
+    return sentence({"timeout ", std::to_string(options.timeout.count()), " ms: 1 to 60000 ms"});
+  }
+  return options.kind == BusKind::rtu ? fault_of_line(options.serial) : std::nullopt;
 }
 
 std::vector<std::size_t> points_of(const Wiring& wiring, std::string_view machine) {

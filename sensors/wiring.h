@@ -50,6 +50,10 @@ struct BusOptions {
   Span retry_limit{60000};  // ... to here, each shortened by a random share of up to a quarter
 };
 
+// What a bus cannot be run with (a kind that is not supported, a line setting out of range); empty:
+// nothing.
+[[nodiscard]] std::optional<std::string> fault_of(const BusOptions& options);
+
 struct DeviceOptions {
   std::string id{};
   std::string bus{};

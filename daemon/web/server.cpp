@@ -1,7 +1,7 @@
 #include "daemon/web/server.h"
 
+#include "config/listen_address.h"
 #include "daemon/web/connection.h"
-#include "daemon/web/listen_address.h"
 
 #include <exception>
 #include <stdexcept>
@@ -38,7 +38,8 @@ class WebServer::Implementation : public std::enable_shared_from_this<Implementa
       : acceptor_{io}, pause_{io} {
     const auto where = listen_address(options.listen);
     if (!where) {
-      throw std::runtime_error{where.error()};
+      throw std::runtime_error{"The page cannot be served at '" + options.listen +
+                               "': allowed is " + where.error() + '.'};
     }
     open({asio::ip::make_address(where->address), where->port}, options.listen);
     port_ = acceptor_.local_endpoint().port();

@@ -19,7 +19,7 @@ namespace lostwork {
 namespace {
 
 PlantConfig demo_plant() {
-  return *read_plant_file(demo_plant_file(), "tern_quay_dairy.toml").and_then(plant_from);
+  return *read_plant(demo_plant_file(), "tern_quay_dairy.toml");
 }
 
 int connected(std::uint16_t port) {

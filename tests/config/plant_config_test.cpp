@@ -1,5 +1,6 @@
 #include "config/plant_config.h"
 
+#include "config/pairs.h"
 #include "tests/config/problem_printer.h"
 
 #include <cmath>
@@ -15,6 +16,7 @@ namespace {
 
 using ::testing::AllOf;
 using ::testing::Contains;
+using ::testing::ElementsAre;
 using ::testing::Field;
 using ::testing::HasSubstr;
 using ::testing::IsEmpty;
@@ -48,7 +50,7 @@ std::string point(const PointText& p) {
 }
 
 tl::expected<PlantConfig, Problems> plant_of(const std::string& text) {
-  return read_plant_file(text, "plant.toml").and_then(plant_from);
+  return read_plant(text, "plant.toml");
 }
 
 Problems problems_of(const std::string& more) {
@@ -160,8 +162,8 @@ INSTANTIATE_TEST_SUITE_P(
         Bad{"AValueAndARegister", point({.more = "value = 1\ndevice = \"panel\"\nregister = 1"}),
             "value", "not both"},
         Bad{"ADoubleId", point({}) + point({.role = "cold.out.temperature", .more = {}}),
-            "point.id", "only once"},
-        Bad{"ADoubleRole", point({}) + point({.id = "other", .more = {}}), "point.role",
+            "point \"cold_in\".id", "only once"},
+        Bad{"ADoubleRole", point({}) + point({.id = "other", .more = {}}), "point \"other\".role",
             "only once"},
         Bad{"APairOfOne", point({.more = "pair = \"alone\""}), "pair", "exactly two points"},
         Bad{"ADifferenceWorseThanTheSensors",
@@ -176,21 +178,198 @@ INSTANTIATE_TEST_SUITE_P(
         Bad{"AnUnknownFluid",
             "[[machine]]\nid = \"m2\"\nname = \"M\"\nrefrigerant = \"R999\"\nrated_power_kW = 5\n",
             "refrigerant", "R134a"},
-        Bad{"AnUnknownBus", "[[device]]\nid = \"d2\"\nbus = \"nowhere\"\n", "device.bus",
+        Bad{"AnUnknownBus", "[[device]]\nid = \"d2\"\nbus = \"nowhere\"\n", "device \"d2\".bus",
             "one of plc"},
-        Bad{"AHostName", "[[bus]]\nid = \"b2\"\naddress = \"plc.example:502\"\n", "bus.address",
-            "numeric"},
+        Bad{"AHostName", "[[bus]]\nid = \"b2\"\naddress = \"plc.example:502\"\n",
+            "bus \"b2\".address", "numeric"},
         Bad{"ASafetyLimitInAWrongUnit",
             "[[safety_limit]]\nmachine = \"chiller-1\"\nkind = \"freezing\"\nlimit = 1\nunit = "
             "\"kW\"\n"
             "document = \"d\"\njurisdiction = \"j\"\n",
-            "safety_limit.unit", "freezing"}),
+            "safety_limit[1].unit", "freezing"},
+        Bad{"AnUnknownClassOfADifference",
+            pair_of("{ limit = 0.1 }") +
+                "[[pair]]\nid = \"ch1_cold\"\ndifference = { class = \"Pt100 D\" }\n",
+            "pair \"ch1_cold\".difference.class", "Pt100 AA"},
+        Bad{"AKindOfBusThatIsNotSupported",
+            "[[bus]]\nid = \"b2\"\nkind = \"rtu_over_tcp\"\naddress = \"192.0.2.7:502\"\n",
+            "bus \"b2\".kind", "not supported yet"},
+        Bad{"ABaudRateBetweenTheUsualOnes",
+            "[[bus]]\nid = \"b2\"\nkind = \"rtu\"\naddress = \"/dev/ttyUSB0\"\nbaud = 9601\n",
+            "bus \"b2\".baud", "9600"},
+        Bad{"AScaleOfNought", point({.more = "device = \"panel\"\nregister = 1\nscale = 0"}),
+            "point \"cold_in\".scale", "any finite number but 0"},
+        Bad{"APageForOtherComputers", "[web]\nlisten = \"0.0.0.0:8470\"\n", "web.listen",
+            "an address of this computer itself"}),
+    [](const auto& param) { return std::string{param.param.name}; });
+
+auto problem_at(std::uint32_t line, std::string_view key, std::string_view found,
+                std::string_view allowed) {
+  return AllOf(Field(&Problem::line, line), Field(&Problem::key, std::string{key}),
+               Field(&Problem::found, HasSubstr(std::string{found})),
+               Field(&Problem::allowed, HasSubstr(std::string{allowed})));
+}
+
+constexpr std::string_view many_problems = R"([site]
+name = "Tern Quay Dairy"
+altitude_m = "twelve"
+timezone = "Europe/Atlantis"
+[web]
+listen = "0.0.0.0:8470"
+[[bus]]
+id = "plc"
+address = "127.0.0.1:1502"
+[[device]]
+id = "panel"
+bus = "plk"
+[[machine]]
+id = "chiller-1"
+name = "Chiller 1"
+duty = "freezing"
+refrigerant = "R410A"
+rated_power_kW = 95
+[[pair]]
+id = "ch1_cold"
+difference = { limit = 0.1 }
+[[point]]
+id = "power"
+machine = "chiller-1"
+role = "power"
+unit = "degC"
+device = "panel"
+regsiter = 100
+type = "u16"
+[[point]]
+id = "cold_in"
+machine = "chiller-1"
+role = "cold.in.temperature"
+unit = "degC"
+pair = "ch1_cold"
+accuracy = { limit = 0.2 }
+device = "panel"
+register = 101
+[[point]]
+id = "cold_out"
+machine = "chiller-1"
+role = "cold.out.temperature"
+unit = "degC"
+pair = "ch1_clod"
+accuracy = { limit = 0.2 }
+device = "pannel"
+register = 102
+range = [50, -10]
+[[point]]
+id = "hot_in"
+machine = "chiller-2"
+role = "hot.in.temperature"
+unit = "kW"
+[[safety_limit]]
+machine = "chiller-3"
+kind = "freezing"
+limit = 1
+unit = "kW"
+document = "name plate"
+jurisdiction = "EN 378"
+)";
+
+TEST(ReadPlant, TellsEveryProblemOnceInTheOrderOfTheFile) {
+  const auto plant = plant_of(std::string{many_problems});
+  ASSERT_FALSE(plant);
+  EXPECT_THAT(
+      plant.error(),
+      ElementsAre(
+          problem_at(3, "site.altitude_m", "twelve", "a number from -500 to 9000"),
+          problem_at(4, "site.timezone", "Europe/Atlantis", "IANA"),
+          problem_at(6, "web.listen", "0.0.0.0:8470", "this computer itself"),
+          problem_at(12, "device \"panel\".bus", "plk", "one of plc"),
+          problem_at(16, "machine \"chiller-1\".duty", "freezing", "\"cooling\", \"heating\""),
+          problem_at(17, "machine \"chiller-1\".refrigerant", "R410A", "R134a"),
+          problem_at(26, "point \"power\".unit", "degC", "for power one of kW W"),
+          problem_at(28, "point \"power\".regsiter", "100", "no such key"),
+          problem_at(44, "point \"cold_out\".pair", "ch1_clod", "exactly two points"),
+          problem_at(46, "point \"cold_out\".device", "pannel", "the id of a device"),
+          problem_at(48, "point \"cold_out\".range", "50", "[lowest, highest]"),
+          problem_at(51, "point \"hot_in\".machine", "chiller-2", "one of chiller-1"),
+          problem_at(53, "point \"hot_in\".unit", "kW", "degC degF K"),
+          problem_at(55, "safety_limit[1].machine", "chiller-3", "one of chiller-1"),
+          problem_at(58, "safety_limit[1].unit", "kW", "freezing")));
+}
+
+// A mistake, and the one key that is to be told of: what follows from it is not.
+struct Cause {
+  const char* name;
+  std::string text;
+  const char* key;
+};
+void PrintTo(const Cause& cause, std::ostream* out) {
+  *out << cause.name;
+}
+
+std::string changed(std::string text, std::string_view what, std::string_view with) {
+  return text.replace(text.find(what), what.size(), with);
+}
+
+class ReadPlantTellsOnlyTheCause : public ::testing::TestWithParam<Cause> {};
+
+TEST_P(ReadPlantTellsOnlyTheCause, OfOneMistake) {
+  const auto plant = plant_of(GetParam().text);
+  ASSERT_FALSE(plant);
+  EXPECT_THAT(plant.error(), ElementsAre(Field(&Problem::key, GetParam().key)));
+}
+
+const std::string one_point =
+    std::string{machine} + point({.more = "device = \"panel\"\nregister = 1"});
+
+INSTANTIATE_TEST_SUITE_P(
+    Mistakes, ReadPlantTellsOnlyTheCause,
+    ::testing::Values(
+        Cause{"AMachineWithoutAGoodId", changed(one_point, "id = \"chiller-1\"", "id = 1"),
+              "machine[1].id"},
+        Cause{"AMachineWithABadFluid", changed(one_point, "R134a", "R999"),
+              "machine \"chiller-1\".refrigerant"},
+        Cause{"AMistypedTableOfMachines", changed(one_point, "[[machine]]", "[[machnie]]"),
+              "machnie"},
+        Cause{"OneTableWhereThereAreMany", changed(one_point, "[[device]]", "[device]"), "device"},
+        Cause{"ADeviceWithoutAGoodId", changed(one_point, "id = \"panel\"", "id = \"\""),
+              "device[1].id"},
+        Cause{"ABusWithoutAGoodId", changed(one_point, "id = \"plc\"", "id = 3"), "bus[1].id"},
+        Cause{"ABusOfABadKind",
+              changed(one_point, "address = \"127.0.0.1:1502\"",
+                      "kind = \"serial\"\naddress = \"/dev/ttyUSB0\""),
+              "bus \"plc\".kind"},
+        Cause{"ARegisterThatIsNoNumber", changed(one_point, "register = 1", "register = \"one\""),
+              "point \"cold_in\".register"},
+        Cause{"ABadType", one_point + "type = \"x32\"\nsentinels = [-1, 0x12345678]\n",
+              "point \"cold_in\".type"},
+        Cause{"ARoleThatIsNoText", changed(one_point, "role = \"cold.in.temperature\"", "role = 7"),
+              "point \"cold_in\".role"},
+        Cause{"APointOfABadPair",
+              std::string{machine} +
+                  changed(pair_of("{ limit = 0.2 }"), "pair = \"ch1_cold\"", "pair = 1"),
+              "point \"a\".pair"},
+        Cause{"AMistypedPairThatIsDeclared",
+              std::string{machine} +
+                  changed(pair_of("{ limit = 0.2 }"), "\"ch1_cold\"", "\"ch1_clod\"") +
+                  "[[pair]]\nid = \"ch1_cold\"\ndifference = { limit = 0.1 }\n",
+              "point \"a\".pair"},
+        Cause{"AMistypedPairThatIsNotDeclared",
+              std::string{machine} +
+                  changed(pair_of("{ limit = 0.2 }"), "\"ch1_cold\"", "\"ch1_clod\""),
+              "point \"b\".pair"},
+        Cause{"APairWithABadUnit",
+              std::string{machine} + changed(pair_of("{ limit = 0.2 }"), "degC", "kW"),
+              "point \"a\".unit"},
+        Cause{"ADifferenceOfABadAccuracy",
+              std::string{machine} +
+                  changed(pair_of("{ limit = 0.2 }"), "{ limit = 0.2 }", "{ limit = -1 }") +
+                  "[[pair]]\nid = \"ch1_cold\"\ndifference = { limit = 0.1 }\n",
+              "point \"a\".accuracy"}),
     [](const auto& param) { return std::string{param.param.name}; });
 
 TEST(PlantFrom, RefusesAnUnknownTimeZone) {
   const auto plant = plant_of("[site]\nname = \"x\"\ntimezone = \"Europe/Atlantis\"\n");
   ASSERT_FALSE(plant);
-  EXPECT_THAT(plant.error(), Contains(problem("site.timezone", "IANA")));
+  EXPECT_THAT(plant.error(), Contains(problem_at(3, "site.timezone", "Europe/Atlantis", "IANA")));
 }
 
 TEST(LoadPlant, SaysWhyAFileCannotBeRead) {

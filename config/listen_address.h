@@ -1,4 +1,4 @@
-// Where the web server listens.
+// Where the page may be served.
 #pragma once
 
 #include <cstdint>
@@ -15,7 +15,8 @@ struct ListenAddress {
 };
 
 // Takes "127.0.0.1:8470", "[::1]:8470" and "localhost:8470". Only loopback addresses, for there are
-// no user accounts: who can open the page can acknowledge alarms. The error is one sentence.
+// no user accounts: who can open the page can acknowledge alarms. The error says what is
+// allowed.
 [[nodiscard]] tl::expected<ListenAddress, std::string> listen_address(std::string_view text);
 
 }  // namespace lostwork

@@ -1,4 +1,4 @@
-#include "daemon/web/listen_address.h"
+#include "config/listen_address.h"
 
 #include <string>
 
@@ -33,7 +33,6 @@ TEST_P(AddressOfOthers, IsRefusedUntilThereAreAccounts) {
   const auto address = listen_address(GetParam());
   ASSERT_FALSE(address);
   EXPECT_THAT(address.error(), testing::HasSubstr("until there are user accounts"));
-  EXPECT_THAT(address.error(), testing::HasSubstr("'" + GetParam() + "'"));
 }
 
 INSTANTIATE_TEST_SUITE_P(Text, AddressOfOthers,
