@@ -72,7 +72,7 @@ struct MachineStep {
 [[nodiscard]] MachineStep advance(const StepModel& model, MachineState state, const Scan& scan);
 
 // Of the layout of save()'s bytes; goes up with every change.
-inline constexpr std::uint32_t machine_state_version = 1;
+inline constexpr std::uint32_t machine_state_version = 2;
 
 [[nodiscard]] std::vector<std::uint8_t> save(const MachineState& state);
 // Damaged bytes and those of another version are refused with a sentence for the log. The state is

@@ -63,15 +63,24 @@ struct AlarmEvent {
   friend bool operator==(const AlarmEvent&, const AlarmEvent&) = default;
 };
 
+// Somebody said "seen".
+struct SeenBy {
+  Instant time{};
+  std::string user;
+  std::string comment;  // may be empty
+
+  friend bool operator==(const SeenBy&, const SeenBy&) = default;
+};
+
 struct Alarm {
   std::string id;  // "chiller-1.point-lost.ch1_cold_in": unique in the plant
   AlarmKind kind{};
   AlarmPriority priority{};
   AlarmState state = AlarmState::normal;
-  Instant since{};                      // the condition began
-  std::optional<Instant> returned;      // the condition ended
-  std::optional<Instant> acknowledged;  // somebody said "seen"
-  bool chattering = false;              // three times active within a minute (methods.md 7.2)
+  Instant since{};                  // the condition began
+  std::optional<Instant> returned;  // the condition ended
+  std::optional<SeenBy> acknowledged;
+  bool chattering = false;  // three times active within a minute (methods.md 7.2)
   std::string text;
   std::vector<Figure> evidence;
 

@@ -71,7 +71,8 @@ ActionUpdate acknowledge(AlarmBook book, const AlarmAction& action) {
     return refused(std::move(book), ActionResult::already);
   }
   slot->alarm.state = *to;
-  slot->alarm.acknowledged = action.time;
+  slot->alarm.acknowledged =
+      SeenBy{.time = action.time, .user = action.user, .comment = action.comment};
   ActionUpdate out;
   out.events.push_back(event_of(slot->alarm, from, action));
   out.next = std::move(book);

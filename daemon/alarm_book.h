@@ -102,6 +102,10 @@ void archive(Archive& a, Figure& f) {
   a(f.name, f.value, f.u, f.limit, f.document);
 }
 template <class Archive>
+void archive(Archive& a, SeenBy& s) {
+  a(s.time, s.user, s.comment);
+}
+template <class Archive>
 void archive(Archive& a, Alarm& s) {
   a(s.id, s.kind, s.priority, s.state, s.since, s.returned, s.acknowledged, s.chattering, s.text,
     s.evidence);

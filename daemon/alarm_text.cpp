@@ -1,5 +1,8 @@
 #include "daemon/alarm_text.h"
 
+#include "daemon/finding_words.h"
+#include "daemon/names.h"
+
 #include <array>
 #include <charconv>
 #include <initializer_list>
@@ -155,15 +158,15 @@ std::string place_text(const Finding& finding) {
                interval_text(finding.component_share, {percent, 0, "%"}), " of the extra power."});
 }
 
-std::string cause_text(const Finding& finding) {
+std::string causes_text(const Finding& finding) {
   if (finding.causes.empty()) {
     return {};
   }
-  const std::string_view first = text(finding.causes.front().cause);
+  const std::string first = cause_text(finding.causes.front());
   if (finding.cause_is_clear || finding.causes.size() == 1) {
     return said({finding.cause_is_clear ? " Most likely " : " Perhaps ", first, "."});
   }
-  return said({" Perhaps ", first, ", or ", text(finding.causes[1].cause), "."});
+  return said({" Perhaps ", first, ", or ", cause_text(finding.causes[1]), "."});
 }
 
 std::string suspects_text(const Finding& finding, std::string_view before,
@@ -173,12 +176,15 @@ std::string suspects_text(const Finding& finding, std::string_view before,
   }
   std::string out;
   for (const Role role : finding.suspect_sensors) {
-    out += said({out.empty() ? before : between, name(role)});
+    out += said({out.empty() ? before : between, "'", text(role), "'"});
   }
   return out + '.';
 }
 
 std::string since_text(const OnsetInterval& onset) {
+  if (date_text(onset.earliest) == date_text(onset.latest)) {
+    return date_text(onset.best);
+  }
   return said({date_text(onset.best), " (between ", date_text(onset.earliest), " and ",
                date_text(onset.latest), ")"});
 }
@@ -229,7 +235,7 @@ std::string safety_return_text(const SafetyMatter& matter) {
 }
 
 std::string point_lost_text(const Loss& loss, Role role, Quality quality) {
-  return said({loss.machine, ": no usable value of ", loss.subject, " (", name(role), ") since ",
+  return said({loss.machine, ": no usable value of ", loss.subject, " (", text(role), ") since ",
                time_text(loss.since), ": ", trouble(quality), ".", blind_text(loss.blind)});
 }
 
@@ -250,7 +256,7 @@ std::string finding_text(std::string_view machine, const Finding& finding) {
     return said({machine, " needs ", interval_text(finding.size, {percent, 1, "%"}),
                  " more power than it did under the same conditions, since ",
                  since_text(finding.onset), ".", cost_text(finding), place_text(finding),
-                 cause_text(finding)});
+                 causes_text(finding)});
   }
   if (finding.kind == FindingKind::law_broken) {
     return said({machine,
@@ -305,6 +311,46 @@ std::vector<Figure> finding_figures(const Finding& finding) {
                    .document = said({"expected by ", finding.baseline_id})});
   }
   return out;
+}
+
+FigureWords words_of(std::string_view figure) {
+  constexpr std::string_view speaks_at = "speaks_at_";
+  constexpr std::string_view cost = "extra_cost_";
+  const bool is_setting = figure.starts_with(speaks_at);
+  const std::string_view measured = is_setting ? figure.substr(speaks_at.size()) : figure;
+  for (std::size_t i = 0; i < static_cast<std::size_t>(SafetyKind::count); ++i) {
+    const Words& w = words(static_cast<SafetyKind>(i));
+    if (w.suffix == measured) {
+      return {.text = std::string{is_setting ? "the alarm comes at" : w.measured},
+              .unit = std::string{w.unit}};
+    }
+  }
+  if (const auto quantity = quantity_named(figure)) {
+    const QuantityInfo& q = info(*quantity);
+    return {.text = std::string{q.meaning}, .unit = std::string{q.unit}};
+  }
+  if (figure.starts_with(cost)) {
+    return {.text = "cost of the extra energy", .unit = std::string{figure.substr(cost.size())}};
+  }
+  for (std::size_t i = 0; i < component_count; ++i) {
+    const auto component = static_cast<Component>(i);
+    if (figure == said({"lost_", name(component), "_change_kW"})) {
+      return {.text = said({"more work that the ", text(component), " loses"}), .unit = "kW"};
+    }
+  }
+  static constexpr std::array<std::array<std::string_view, 3>, 3> others{
+      {
+       {"points", "sensors without a value", ""},
+       {"missed_scans", "scans missed in a row", ""},
+       {"extra_energy_kWh", "extra energy", "kWh"},
+       }
+  };
+  for (const auto& [key, plain, unit] : others) {
+    if (figure == key) {
+      return {.text = std::string{plain}, .unit = std::string{unit}};
+    }
+  }
+  return {.text = std::string{figure}, .unit = {}};
 }
 
 }  // namespace lostwork

@@ -65,4 +65,12 @@ struct Loss {
 [[nodiscard]] std::string finding_over_text(std::string_view machine, const Finding& finding);
 [[nodiscard]] std::vector<Figure> finding_figures(const Finding& finding);
 
+// A figure's name in plain words, and its unit: "discharge_pressure_bar" is the "discharge
+// pressure" in "bar (absolute)". A name that is not known is its own words.
+struct FigureWords {
+  std::string text;
+  std::string unit;
+};
+[[nodiscard]] FigureWords words_of(std::string_view figure);
+
 }  // namespace lostwork

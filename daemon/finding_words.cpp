@@ -4,12 +4,14 @@
 #include "daemon/names.h"
 
 #include <cmath>
+#include <optional>
 
 namespace lostwork {
 namespace {
 
 constexpr double percent = 100.0;
 constexpr double joules_per_kWh = 3.6e6;
+constexpr double kilo = 1e-3;
 
 std::string onset_text(const OnsetInterval& onset, const WallClock& clock) {
   const auto day = [&clock](Instant time) { return day_text(time, clock.now, clock.offset); };
@@ -61,6 +63,44 @@ std::string cost_sentence(const Finding& finding) {
     sentence += " and released " + with_interval(*finding.extra_co2_kg, "kg") + " of CO2";
   }
   return sentence + '.';
+}
+
+// How far off a sensor reads.
+struct Bias {
+  Role role;
+  Measured off_SI;                    // signed; of a flow in kg/s
+  std::optional<double> present_kgs;  // of a flow
+};
+
+std::string size_text(const Bias& bias, const Measured& size_SI) {
+  switch (dimension(bias.role)) {
+    case Dimension::temperature: return with_interval(size_SI, "K");
+    case Dimension::pressure: return with_interval(scaled(size_SI, kilo), "kPa");
+    case Dimension::power: return with_interval(scaled(size_SI, kilo), "kW");
+    case Dimension::flow:
+      return bias.present_kgs ? with_interval(scaled(size_SI, percent / *bias.present_kgs), "%")
+                              : with_interval(size_SI, "kg/s");
+    default: return {};
+  }
+}
+
+std::string sensor_text(const std::string& sensor, const Bias& bias) {
+  const bool is_high = bias.off_SI.value > 0.0;
+  const std::string size = size_text(bias, scaled(bias.off_SI, is_high ? 1.0 : -1.0));
+  const std::string subject = "the sensor '" + sensor + "' ";
+  if (size.empty() || bias.off_SI.value == 0.0 || !std::isfinite(bias.off_SI.value)) {
+    return subject + "is wrong";
+  }
+  return subject + "reads " + size + (is_high ? " too high" : " too low");
+}
+
+std::optional<double> present_flow_kgs(Role role, const MachineView& machine) {
+  if (role != Role::cold_flow && role != Role::hot_flow) {
+    return std::nullopt;
+  }
+  const Result<Measured>& flow =
+      machine.latest.values[role == Role::cold_flow ? Quantity::cold_flow : Quantity::hot_flow];
+  return flow && flow->value > 0.0 ? std::optional{flow->value} : std::nullopt;
 }
 
 }  // namespace
@@ -120,10 +160,21 @@ std::string text(FindingKind kind, const Evidence& evidence) {
 }
 
 std::string text(const RankedCause& cause, const MachineView& machine) {
-  if (cause.cause == Cause::sensor && cause.role) {
-    return "the sensor '" + text(*cause.role, machine) + "' is wrong";
+  if (cause.cause != Cause::sensor || !cause.role) {
+    return cause_text(cause);
   }
-  return std::string{text(cause.cause)};
+  return sensor_text(text(*cause.role, machine),
+                     {.role = *cause.role,
+                      .off_SI = cause.amount_SI,
+                      .present_kgs = present_flow_kgs(*cause.role, machine)});
+}
+
+std::string cause_text(const RankedCause& cause) {
+  if (cause.cause != Cause::sensor || !cause.role) {
+    return std::string{text(cause.cause)};
+  }
+  return sensor_text(text(*cause.role),
+                     {.role = *cause.role, .off_SI = cause.amount_SI, .present_kgs = std::nullopt});
 }
 
 std::vector<std::string> cautions(const Finding& finding) {

@@ -18,8 +18,11 @@ namespace lostwork {
 [[nodiscard]] std::vector<std::string> consequences(const Finding& finding);
 // "work that the condenser destroys: 8.0 kW where 6.0 kW was expected (2.0 kW +/- 0.4 kW, 95 %)"
 [[nodiscard]] std::string text(FindingKind kind, const Evidence& evidence);
-// "the condenser is fouled", "the sensor 'cold water leaving' is wrong"
+// "the condenser is fouled", "the sensor 'cold water leaving' reads 0.48 K +/- 0.05 K (95 %) too
+// high"; a flow in per cent of its present reading where there is one.
 [[nodiscard]] std::string text(const RankedCause& cause, const MachineView& machine);
+// The same by itself: the streams are water, and a flow is in kg/s.
+[[nodiscard]] std::string cause_text(const RankedCause& cause);
 // What must be kept in mind before anyone acts on it; never empty.
 [[nodiscard]] std::vector<std::string> cautions(const Finding& finding);
 

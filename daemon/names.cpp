@@ -12,22 +12,22 @@ std::string_view row(const std::array<std::string_view, n>& table, Enum value) {
   return table.at(static_cast<std::size_t>(value));
 }
 
-std::string fluid_role(std::string_view fluid, std::string_view place) {
-  return std::string{fluid} + ' ' + std::string{place};
+std::string fluid_role(std::string_view stream, std::string_view place) {
+  return std::string{stream} + ' ' + std::string{place};
 }
 
 }  // namespace
 
-std::string text(Role role, const MachineView& machine) {
-  const std::string& cold = machine.cold_fluid;
-  const std::string& hot = machine.hot_fluid;
+std::string text(Role role, const StreamNames& streams) {
+  const std::string cold = "cold " + std::string{streams.cold};
+  const std::string hot = "hot " + std::string{streams.hot};
   switch (role) {
-    case Role::cold_in_temperature: return fluid_role("cold " + cold, "entering");
-    case Role::cold_out_temperature: return fluid_role("cold " + cold, "leaving");
-    case Role::cold_flow: return fluid_role("cold " + cold, "flow");
-    case Role::hot_in_temperature: return fluid_role("hot " + hot, "entering");
-    case Role::hot_out_temperature: return fluid_role("hot " + hot, "leaving");
-    case Role::hot_flow: return fluid_role("hot " + hot, "flow");
+    case Role::cold_in_temperature: return fluid_role(cold, "entering");
+    case Role::cold_out_temperature: return fluid_role(cold, "leaving");
+    case Role::cold_flow: return fluid_role(cold, "flow");
+    case Role::hot_in_temperature: return fluid_role(hot, "entering");
+    case Role::hot_out_temperature: return fluid_role(hot, "leaving");
+    case Role::hot_flow: return fluid_role(hot, "flow");
     case Role::suction_pressure: return "suction pressure";
     case Role::suction_temperature: return "suction temperature";
     case Role::discharge_pressure: return "discharge pressure";
@@ -48,6 +48,10 @@ std::string text(Role role, const MachineView& machine) {
     case Role::count: break;
   }
   return std::string{lostwork::name(role)};
+}
+
+std::string text(Role role, const MachineView& machine) {
+  return text(role, StreamNames{.cold = machine.cold_fluid, .hot = machine.hot_fluid});
 }
 
 std::string text(const PointView& point, const MachineView& machine) {

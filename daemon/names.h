@@ -10,7 +10,13 @@
 
 namespace lostwork {
 
-// "cold water leaving", "discharge pressure"; the fluid's name is the machine's own.
+// Of the machine's two streams.
+struct StreamNames {
+  std::string_view cold = "water";
+  std::string_view hot = "water";
+};
+// "cold water leaving", "discharge pressure"
+[[nodiscard]] std::string text(Role role, const StreamNames& streams = {});
 [[nodiscard]] std::string text(Role role, const MachineView& machine);
 // The point's own name, or its role in words, with the circuit where that is not the first.
 [[nodiscard]] std::string text(const PointView& point, const MachineView& machine);

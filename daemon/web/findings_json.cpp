@@ -1,3 +1,4 @@
+#include "daemon/alarm_text.h"
 #include "daemon/figures.h"
 #include "daemon/finding_words.h"
 #include "daemon/names.h"
@@ -17,7 +18,9 @@ constexpr double kWh_per_joule = 1.0 / 3.6e6;
 
 void evidence_figure(JsonWriter& json, const Figure& f) {
   json.begin_object();
-  json.member("name", f.name).member("value", f.value);
+  const FigureWords words = words_of(f.name);
+  json.member("name", f.name).member("text", words.text).member("unit", words.unit);
+  json.member("value", f.value);
   optional_member(json, "u", f.u);
   optional_member(json, "limit", f.limit);
   json.member("document", f.document).end_object();
@@ -34,7 +37,9 @@ void alarm_object(JsonWriter& json, const AlarmView& view) {
       .member("chattering", alarm.chattering)
       .member("since", iso_text(alarm.since));
   time_member(json, "returned", alarm.returned);
-  time_member(json, "acknowledged", alarm.acknowledged);
+  const SeenBy seen = alarm.acknowledged.value_or(SeenBy{});
+  time_member(json, "acknowledged", alarm.acknowledged ? std::optional{seen.time} : std::nullopt);
+  json.member("acknowledged_by", seen.user).member("comment", seen.comment);
   json.member("text", alarm.text);
   array_member(json, "evidence", alarm.evidence,
                [&json](const Figure& f) { evidence_figure(json, f); });

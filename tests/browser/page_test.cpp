@@ -179,6 +179,38 @@ TEST_F(Page, AcknowledgesAnAlarmByKeyboard) {
       "document.querySelector('[data-alarm=\"chiller-1.drift\"] .state').textContent === "
       "'active, acknowledged'"));
   EXPECT_THAT(plant->acknowledged(), testing::ElementsAre("chiller-1.drift: seen"));
+  EXPECT_THAT(text("[data-alarm=\"chiller-1.drift\"]"), HasSubstr("by local: \u201cseen\u201d"));
+}
+
+TEST_F(Page, LinksTheAlarmOfAFindingToTheFinding) {
+  plant->change([](PlantView& view) {
+    view.alarms.front().alarm.id = view.machines.at(0).findings.front().id;
+  });
+  EXPECT_TRUE(browser->comes_true(
+      "document.querySelector(document.querySelector('[data-alarm] a').getAttribute('href')"
+      ".replaceAll('.', '\\\\.')).dataset.finding !== undefined"));
+  EXPECT_THAT(text("[data-alarm]"), Not(HasSubstr("Figures behind it")));
+}
+
+TEST_F(Page, NamesTheFiguresOfALimitInPlainWords) {
+  plant->change([](PlantView& view) {
+    Alarm& alarm = view.alarms.front().alarm;
+    alarm.id = "chiller-1.high-pressure";
+    alarm.kind = AlarmKind::high_pressure;
+    alarm.evidence = {
+        {.name = "discharge_pressure_bar",
+         .value = 16.5,
+         .u = 0.05,
+         .limit = 18.0,
+         .document = "rating plate, 2021"}
+    };
+  });
+  EXPECT_TRUE(browser->comes_true(
+      "document.querySelector('[data-alarm=\"chiller-1.high-pressure\"] details') !== null"));
+  browser->run("document.querySelector('[data-alarm] details').open = true;");
+  EXPECT_THAT(text("[data-alarm] details li"),
+              testing::StrEq("discharge pressure: 16.50 bar (absolute) \u00b1 0.10 bar (absolute) "
+                             "(95 %), limit 18.00 bar (absolute) from rating plate, 2021"));
 }
 
 TEST_F(Page, ChangesBySelfWhenThePlantDoes) {

@@ -374,6 +374,24 @@ TEST_F(Book, GoesThroughAllStates) {
   }
 }
 
+TEST_F(Book, KeepsWhoSawAnAlarmAndTheComment) {
+  const std::string id = "chiller-1.point-lost.t_in";
+  scans(3, {
+               {"t_in", Quality::timeout}
+  });
+  const ActionUpdate update = acknowledge(std::move(book), {.machine = "chiller-1",
+                                                            .alarm = id,
+                                                            .user = "Ann",
+                                                            .comment = "sensor ordered",
+                                                            .time = Instant{}});
+  ASSERT_EQ(update.result, ActionResult::done);
+  const std::vector<Alarm> shown = current_alarms(update.next);
+  ASSERT_THAT(shown, SizeIs(1));
+  ASSERT_TRUE(shown[0].acknowledged);
+  EXPECT_EQ(shown[0].acknowledged->user, "Ann");
+  EXPECT_EQ(shown[0].acknowledged->comment, "sensor ordered");
+}
+
 TEST_F(Book, MarksAnAlarmThatComesAndGoes) {
   rules.limits = {limit_of(SafetyKind::refrigerant_detector, 500e-6)};
   rules.timings.detector.off_delay = Span{0};

@@ -142,6 +142,26 @@ TEST(FindingText, SaysWhatADriftCostsSinceWhenAndWhere) {
                     HasSubstr("The lost work of the condenser grew most: 58 %")));
 }
 
+TEST(FindingText, LeavesOutTheIntervalOfASingleDay) {
+  Finding f = drift();
+  f.onset = {.best = then, .earliest = then - 1h, .latest = then + 1h};
+  EXPECT_THAT(finding_text("Chiller 1", f),
+              AllOf(HasSubstr("since 3 May 2026."), Not(HasSubstr("between"))));
+}
+
+TEST(FindingText, SaysHowFarOffASensorReads) {
+  Finding f = drift();
+  f.causes = {
+      RankedCause{.cause = Cause::sensor,
+                  .role = Role::cold_out_temperature,
+                  .probability = 0.9,
+                  .amount_SI = {.value = -0.48, .u = 0.025}}
+  };
+  EXPECT_THAT(
+      finding_text("Chiller 1", f),
+      HasSubstr("the sensor 'cold water leaving' reads 0.48 K \u00b1 0.05 K (95 %) too low"));
+}
+
 TEST(FindingText, NamesNoMoneyWithoutAPrice) {
   Finding f = drift();
   f.extra_cost.reset();
@@ -160,7 +180,7 @@ TEST(FindingText, CallsASensorASensor) {
   f.suspect_sensors = {Role::hot_out_temperature};
   EXPECT_THAT(finding_text("Chiller 1", f),
               AllOf(HasSubstr("a sensor no longer fits the others"),
-                    HasSubstr("hot.out.temperature"), Not(HasSubstr("more power"))));
+                    HasSubstr("Most likely 'hot water leaving'."), Not(HasSubstr("more power"))));
 }
 
 TEST(FindingFigures, CarryTheirUncertainty) {
@@ -173,13 +193,29 @@ TEST(FindingFigures, CarryTheirUncertainty) {
   EXPECT_DOUBLE_EQ(figures.back().value, 2.1);
 }
 
+TEST(WordsOfAFigure, ArePlain) {
+  EXPECT_EQ(words_of("discharge_pressure_bar").text, "discharge pressure");
+  EXPECT_EQ(words_of("discharge_pressure_bar").unit, "bar (absolute)");
+  EXPECT_EQ(words_of("speaks_at_evaporating_degC").text, "the alarm comes at");
+  EXPECT_EQ(words_of("speaks_at_evaporating_degC").unit, "degC");
+  EXPECT_EQ(words_of("missed_scans").text, "scans missed in a row");
+  EXPECT_EQ(words_of("extra_cost_EUR").unit, "EUR");
+}
+
+TEST(WordsOfAFigure, AreKnownForEveryFigureOfAFinding) {
+  for (const Figure& figure : finding_figures(drift())) {
+    EXPECT_NE(words_of(figure.name).text, figure.name);
+    EXPECT_NE(words_of(figure.name).unit, "");
+  }
+}
+
 TEST(LossText, SaysWhichRuleIsBlindMeanwhile) {
   const Loss loss{.machine = "Chiller 1",
                   .subject = "ch1_p_high",
                   .since = then,
                   .blind = {SafetyKind::high_pressure}};
   EXPECT_THAT(point_lost_text(loss, Role::discharge_pressure, Quality::sentinel),
-              AllOf(HasSubstr("ch1_p_high"), HasSubstr("discharge.pressure"),
+              AllOf(HasSubstr("ch1_p_high"), HasSubstr("(discharge pressure)"),
                     HasSubstr("the device reports that it has no value"),
                     HasSubstr("high-pressure limit cannot see"),
                     HasSubstr("safety devices remain the protection")));

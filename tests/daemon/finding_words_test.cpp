@@ -84,6 +84,45 @@ TEST(TextOfEvidence, GivesTheBoundOfALaw) {
                 "\u00b1 0.6 K (95 %))"));
 }
 
+struct OffCase {
+  Role role;
+  Measured off_SI;
+  std::string said;
+};
+class SensorThatReadsWrong : public testing::TestWithParam<OffCase> {};
+
+TEST_P(SensorThatReadsWrong, IsSaidToBeOffBySoMuch) {
+  MachineView machine = chiller();
+  machine.latest.values[Quantity::cold_flow] = Measured{.value = 14.0, .u = 0.1};
+  const RankedCause cause{.cause = Cause::sensor,
+                          .role = GetParam().role,
+                          .probability = 0.9,
+                          .amount_SI = GetParam().off_SI};
+  EXPECT_THAT(text(cause, machine), testing::EndsWith(GetParam().said));
+}
+
+INSTANTIATE_TEST_SUITE_P(Kinds, SensorThatReadsWrong,
+                         testing::Values(
+                             OffCase{
+                                 Role::cold_out_temperature,
+                                 {.value = 0.48, .u = 0.025},
+                                 "'cold water leaving' reads 0.48 K \u00b1 0.05 K (95 %) too high"
+},
+                             OffCase{Role::discharge_pressure,
+                                     {.value = -21e3, .u = 1.5e3},
+                                     "reads 21 kPa \u00b1 3 kPa (95 %) too low"},
+                             OffCase{Role::power,
+                                     {.value = 900.0, .u = 200.0},
+                                     "reads 0.9 kW \u00b1 0.4 kW (95 %) too high"},
+                             // 0.7 of 14 kg/s
+                             OffCase{Role::cold_flow,
+                                     {.value = 0.7, .u = 0.14},
+                                     "reads 5.0 % \u00b1 2.0 % (95 %) too high"},
+                             OffCase{Role::hot_flow,
+                                     {.value = -0.7, .u = 0.2},
+                                     "reads 0.7 kg/s \u00b1 0.4 kg/s (95 %) too low"},
+                             OffCase{Role::power, {}, "'electrical power' is wrong"}));
+
 TEST(CautionsOfADrift, DeferToLicensedWorkAndLocalCode) {
   EXPECT_THAT(cautions(chiller().findings.front()),
               Contains(HasSubstr("licensed or certified person, and under the local code")));

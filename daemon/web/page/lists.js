@@ -1,7 +1,7 @@
 // Alarms and findings.
 
 import { el, refresh } from "./dom.js";
-import { dayAndTime, number } from "./format.js";
+import { dayAndTime, number, unitText } from "./format.js";
 
 const priorities = {
   1: "Danger: minutes", 2: "Protects the machine: within the hour", 3: "Costs energy: within days",
@@ -52,10 +52,31 @@ function acknowledgeForm(alarm, acknowledged) {
 }
 
 function evidenceLine(item) {
-  const half = item.u ? ` \u00b1 ${number(2 * item.u, 2)} (95 %)` : "";
-  const limit = item.limit === null ? "" : `, limit ${number(item.limit, 2)}`;
+  const unit = unitText(item.unit) ? " " + unitText(item.unit) : "";
+  const digits = Number.isInteger(item.value) && !item.u ? 0 : 2;
+  const half = item.u ? ` \u00b1 ${number(2 * item.u, digits)}${unit} (95 %)` : "";
+  const limit = item.limit === null ? "" : `, limit ${number(item.limit, digits)}${unit}`;
   const source = item.document ? ` from ${item.document}` : "";
-  return el("li", {}, `${item.name}: ${number(item.value, 2)}${half}${limit}${source}`);
+  return el("li", {}, `${item.text}: ${number(item.value, digits)}${unit}${half}${limit}${source}`);
+}
+
+const ofFindings = ["drift", "sensor-suspect"];
+
+// The figures of a finding stand with it, in words; those of a limit stand here.
+function behind(alarm) {
+  if (ofFindings.includes(alarm.kind)) {
+    return alarm.state.startsWith("active")
+      ? el("p", {}, el("a", { href: `#finding-${alarm.id}` }, "What it rests on")) : null;
+  }
+  return alarm.evidence.length === 0 ? null
+    : el("details", { id: "evidence-" + alarm.id }, el("summary", {}, "Figures behind it"),
+      el("ul", {}, ...alarm.evidence.map(evidenceLine)));
+}
+
+function acknowledgedText(alarm) {
+  const by = alarm.acknowledged_by ? ` by ${alarm.acknowledged_by}` : "";
+  const comment = alarm.comment ? `: \u201c${alarm.comment}\u201d` : "";
+  return `acknowledged ${dayAndTime(alarm.acknowledged)}${by}${comment}`;
 }
 
 function alarmItem(alarm, acknowledged) {
@@ -64,7 +85,7 @@ function alarmItem(alarm, acknowledged) {
     times.push(`over since ${dayAndTime(alarm.returned)}`);
   }
   if (alarm.acknowledged) {
-    times.push(`acknowledged ${dayAndTime(alarm.acknowledged)}`);
+    times.push(acknowledgedText(alarm));
   }
   return el("article", { class: "item", "data-tone": tone(alarm), "data-alarm": alarm.id },
     el("p", { class: "strong" }, alarm.text),
@@ -73,9 +94,7 @@ function alarmItem(alarm, acknowledged) {
     alarm.safety_relevant
       ? el("p", { class: "note" }, "This is information from a monitor, not a safety function.")
       : null,
-    alarm.evidence.length === 0 ? null
-      : el("details", { id: "evidence-" + alarm.id }, el("summary", {}, "Figures behind it"),
-        el("ul", {}, ...alarm.evidence.map(evidenceLine))),
+    behind(alarm),
     unacknowledged(alarm) ? acknowledgeForm(alarm, acknowledged) : null);
 }
 
@@ -106,7 +125,7 @@ function causes(finding) {
 function findingItem(finding) {
   const watched = finding.state === "watch";
   return el("article", { class: "item", "data-tone": watched ? "plain" : "warn",
-    "data-finding": finding.id },
+    "data-finding": finding.id, id: `finding-${finding.id}`, tabindex: "-1" },
     el("p", { class: "strong" }, finding.headline),
     ...finding.consequences.map((text) => el("p", {}, text)),
     ...causes(finding),

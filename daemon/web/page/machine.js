@@ -161,7 +161,6 @@ export class MachineSection {
   }
 
   build() {
-    const band = (kind, text) => el("li", {}, el("span", { class: kind }), text);
     return el("section", { class: "machine", id: `machine-${this.id}`, tabindex: "-1",
       "aria-labelledby": `title-${this.id}` },
     el("header", {}, this.title, this.lead, this.facts),
@@ -173,15 +172,14 @@ export class MachineSection {
     sheet("What has been found", this.findings),
     sheet("Second-law efficiency", el("ul", { class: "keys" },
       el("li", {}, el("span", { class: "key-line" }), "efficiency"),
-      band("key-band", "95 % interval")),
+      el("li", {}, el("span", { class: "key-band" }), "95 % interval")),
     this.chartPair("efficiency")),
     sheet("Power over time", el("ul", { class: "keys" },
       el("li", {}, el("span", { class: "key-line" }), "measured"),
-      el("li", {}, el("span", { class: "key-line dashed" }), "expected when well"),
-      band("key-band", "95 % interval, measured"),
-      band("key-band expected", "95 % interval, expected")),
+      el("li", {}, el("span", { class: "key-line dashed" }), "expected when well")),
     this.chartPair("power"),
-    el("p", { class: "note" }, "Gaps in the dashed line are hours outside what was learned.")),
+    el("p", { class: "note" }, "Gaps in the dashed line are hours outside what was learned. The " +
+      "95 % intervals, often narrower than the lines, are in the tables.")),
     this.sensors.node, this.rules.node, this.figures.node);
   }
 

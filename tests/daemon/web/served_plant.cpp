@@ -63,7 +63,8 @@ class ServedPlant::Implementation {
       return Acknowledgement::already;
     }
     alarm->alarm.state = AlarmState::active_acknowledged;
-    alarm->alarm.acknowledged = view.time;
+    alarm->alarm.acknowledged =
+        SeenBy{.time = view.time, .user = "local", .comment = std::string{comment}};
     acknowledged.push_back(std::string{id} + ": " + std::string{comment});
     ++view.revision;
     server->changed();
