@@ -59,9 +59,18 @@ constexpr CommandLine command{
         "past season, then live behind a Modbus TCP server on loopback.\n"
         "A fault is KIND:KEY=VALUE,... as in\n"
         "  condenser_fouling:machine=chiller-1,from=2026-05-04,power=7,days=63\n"
-        "Kinds: condenser_fouling low_condenser_flow refrigerant_leak compressor_wear "
-        "sensor_drift\n"
-        "device_silent.",
+        "Every fault has from= and may have to=, the day of the repair. The other keys by kind:\n"
+        "  condenser_fouling   machine= and rate=, limit= or power=, days=\n"
+        "  low_condenser_flow  machine= and loss=\n"
+        "  refrigerant_leak    machine= and rate=, limit=\n"
+        "  compressor_wear     machine= and rate=, limit= or power=, days=\n"
+        "  sensor_drift        sensor= and rate=, limit=\n"
+        "  sensor_broken       sensor=\n"
+        "  device_silent       device= and to=, which it needs\n"
+        "rate and limit: percent a day and percent (kelvin for sensor_drift); limit= may stay "
+        "away.\n"
+        "loss: percent of the flow. power, days: grows to so many percent more power in so long.",
+
     .options = options};
 
 struct DemoOptions {

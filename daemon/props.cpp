@@ -35,7 +35,8 @@ constexpr CommandLine command{
     .purpose =
         "Properties of a fluid as CSV, one row a point. A point without an answer has an empty "
         "row\n"
-        "with the reason in the last column. Refrigerants: h = 200 kJ/kg and s = 1 kJ/(kg K) for\n"
+        "with the reason in the last column; the exit code is then 1 for the values of a command\n"
+        "line, 0 for a file. Refrigerants: h = 200 kJ/kg and s = 1 kJ/(kg K) for\n"
         "saturated liquid at 0 degC; water: u = s = 0 for saturated liquid at the triple point.\n"
         "The safety classes of --list are for orientation; the local code decides.",
     .options = options,
@@ -204,6 +205,15 @@ int props_command(std::span<const std::string_view> arguments, std::ostream& out
     return 2;
   }
   write_answers(out, *question->fluid, *question->pair, question->points);
+  if (parsed->has("--input")) {
+    return 0;
+  }
+  const auto answer = question->pair->answer(*question->fluid, question->points.front());
+  if (!answer) {
+    err << "lostwork props: no answer for this point; "
+        << sentence(*question->fluid, answer.error()) << '\n';
+    return 1;
+  }
   return 0;
 }
 

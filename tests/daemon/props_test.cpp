@@ -2,6 +2,7 @@
 
 #include "daemon/csv.h"
 
+#include <algorithm>
 #include <cstdlib>
 #include <filesystem>
 #include <fstream>
@@ -164,6 +165,14 @@ TEST(Props, GivesAnEmptyRowWithTheReasonForAPointWithoutAnswer) {
   }
   EXPECT_THAT(cells[10], StartsWith("outside_fluid: temperature 500 degC"));
   EXPECT_EQ(outcome.cells(2)[1], "vapour");
+}
+
+TEST(Props, FailsWithASentenceForOnePointWithoutAnswer) {
+  const Outcome outcome = props({"--fluid", "R134a", "--given", "T,p", "500", "100"});
+  EXPECT_EQ(outcome.code, 1);
+  EXPECT_THAT(outcome.cells(1)[10], StartsWith("outside_fluid: temperature 500 degC"));
+  EXPECT_THAT(outcome.err, HasSubstr("outside_fluid: temperature 500 degC"));
+  EXPECT_EQ(std::count(outcome.err.begin(), outcome.err.end(), '\n'), 1);
 }
 
 TEST(Props, NamesAnImplausibleFigure) {
