@@ -58,7 +58,7 @@ tl::expected<ListenAddress, std::string> listen_address(std::string_view text) {
   }
   if (!address->loopback) {
     return tl::unexpected<std::string>{
-        "until there are user accounts, an address of this computer itself (127.0.0.1 or [::1])"};
+        "an address of this computer itself (127.0.0.1 or [::1]) until there are user accounts"};
   }
   return ListenAddress{.address = address->text, .port = *port};
 }

@@ -226,13 +226,14 @@ class Loop {
       for (const Problem& problem : plant.error()) {
         log_.line(Severity::error, text(options_.plant_file->string(), problem));
       }
-      log_.line(Severity::error, "the plant file is kept as it was");
+      log_.line(Severity::error, "the plant that was running is kept");
       return;
     }
     try {
       adopt(std::move(*plant));
     } catch (const std::exception& error) {
-      log_.line(Severity::error, std::string{error.what()} + "; the plant file is kept as it was");
+      log_.line(Severity::error,
+                std::string{error.what()} + "; the plant that was running is kept");
     }
   }
 

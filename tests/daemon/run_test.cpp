@@ -101,7 +101,7 @@ TEST_F(Run, KeepsTheOldPlantFileWhenTheNewOneIsBad) {
   static_cast<void>(folder_.file("plant.toml", plant_text(server_.port(), "[nonsense]\nx = 1\n")));
   program.signal(SIGHUP);
   EXPECT_THAT(program.wait_for_line("nonsense"), HasSubstr("no such table"));
-  static_cast<void>(program.wait_for_line("kept as it was"));
+  static_cast<void>(program.wait_for_line("is kept"));
   program.signal(SIGTERM);
   EXPECT_EQ(program.wait(), 0);
 }

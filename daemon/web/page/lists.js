@@ -136,6 +136,6 @@ function findingItem(finding) {
 
 export function showFindings(place, findings) {
   refresh(place, findings, () => findings.length === 0
-    ? [el("p", { class: "note" }, "Nothing is out of the ordinary.")]
+    ? [el("p", { class: "note" }, "No drift and no wrong sensor has been found.")]
     : findings.map(findingItem));
 }
