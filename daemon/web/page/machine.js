@@ -48,6 +48,8 @@ function compare(machine, values) {
   return [
     el("table", { class: "compare" }, el("tbody", {}, row("Measured", power, "kW"),
       row("Expected when well", expected, "kW"), row("More than expected", more, "%"))),
+    el("p", { class: "note" }, "Of this moment. What a fault costs changes with the load; what has "
+      + "been found is the mean of many days, like for like."),
     machine.learning.text
       ? el("p", { class: "note" }, learningText(machine.learning))
       : null,
