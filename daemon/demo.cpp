@@ -70,7 +70,6 @@ constexpr CommandLine command{
         "rate and limit: percent a day and percent (kelvin for sensor_drift); limit= may stay "
         "away.\n"
         "loss: percent of the flow. power, days: grows to so many percent more power in so long.",
-
     .options = options};
 
 struct DemoOptions {

@@ -11,7 +11,7 @@ namespace {
 
 constexpr double percent = 100.0;
 constexpr double joules_per_kWh = 3.6e6;
-constexpr double kilo = 1e-3;
+constexpr double to_kilo = 1e-3;
 
 std::string onset_text(const OnsetInterval& onset, const WallClock& clock) {
   const auto day = [&clock](Instant time) { return day_text(time, clock.now, clock.offset); };
@@ -75,8 +75,8 @@ struct Bias {
 std::string size_text(const Bias& bias, const Measured& size_SI) {
   switch (dimension(bias.role)) {
     case Dimension::temperature: return with_interval(size_SI, "K");
-    case Dimension::pressure: return with_interval(scaled(size_SI, kilo), "kPa");
-    case Dimension::power: return with_interval(scaled(size_SI, kilo), "kW");
+    case Dimension::pressure: return with_interval(scaled(size_SI, to_kilo), "kPa");
+    case Dimension::power: return with_interval(scaled(size_SI, to_kilo), "kW");
     case Dimension::flow:
       return bias.present_kgs ? with_interval(scaled(size_SI, percent / *bias.present_kgs), "%")
                               : with_interval(size_SI, "kg/s");

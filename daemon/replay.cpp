@@ -103,7 +103,10 @@ tl::expected<Rows, std::string> counted_rows(const std::filesystem::path& input,
 }
 
 // Steadiness is judged by the samples that are due: with rows further apart than the scan period
-// hardly any interval is steady, and nothing is learned.
+// hardly any interval is steady, and nothing is learned; beyond 75 s ten minutes hold too few
+// samples whatever the period (thermo/measure/steady.h).
+constexpr double longest_steady_s = 75.0;
+
 void warn_of_spacing(const PlantConfig& plant, const Rows& rows, std::ostream& err) {
   const auto usual =
       std::max_element(rows.spacings.begin(), rows.spacings.end(),
@@ -114,9 +117,16 @@ void warn_of_spacing(const PlantConfig& plant, const Rows& rows, std::ostream& e
   const double usual_s = std::chrono::duration<double>(usual->first).count();
   for (const MachineConfig& machine : plant.machines) {
     const double scan_s = std::chrono::duration<double>(machine.model.scan_period).count();
-    if (usual_s > 1.2 * scan_s || usual_s < 0.8 * scan_s) {
-      err << "lostwork replay: note: the rows are " << usual_s << " s apart, but "
-          << machine.model.id << " has scan_s = " << scan_s << "; enter scan_s = " << usual_s
+    if (usual_s <= 1.2 * scan_s) {
+      continue;
+    }
+    err << "lostwork replay: note: the rows are " << usual_s << " s apart, but " << machine.model.id
+        << " has scan_s = " << scan_s;
+    if (usual_s > longest_steady_s) {
+      err << "; rows more than " << longest_steady_s
+          << " s apart are too few to tell a steady interval, so nothing is learned from them\n";
+    } else {
+      err << "; enter scan_s = " << usual_s
           << " for this history, or steady intervals will be missed\n";
     }
   }

@@ -21,6 +21,7 @@ namespace {
 
 using ::testing::HasSubstr;
 using ::testing::IsEmpty;
+using ::testing::Not;
 
 struct Outcome {
   int code;
@@ -242,6 +243,27 @@ TEST(Replay, SaysThatTheRowsAreNotAsFarApartAsTheScans) {
                    "time,t_in,t_out\n2026-01-01T00:00:00Z,12,7\n2026-01-01T00:01:00Z,12,7\n")});
   EXPECT_EQ(outcome.code, 0);
   EXPECT_THAT(outcome.err, HasSubstr("the rows are 60 s apart, but m has scan_s = 10"));
+}
+
+TEST(Replay, SaysThatRowsFarApartTeachNothing) {
+  const TestFolder folder;
+  const Outcome outcome = replayed(
+      {"--config", folder.file("plant.toml", small_plant), "--input",
+       folder.file("h.csv",
+                   "time,t_in,t_out\n2026-01-01T00:00:00Z,12,7\n2026-01-01T00:15:00Z,12,7\n")});
+  EXPECT_EQ(outcome.code, 0);
+  EXPECT_THAT(outcome.err, HasSubstr("rows more than 75 s apart"));
+}
+
+// Closer rows lose nothing.
+TEST(Replay, SaysNothingOfRowsCloserThanTheScans) {
+  const TestFolder folder;
+  const Outcome outcome = replayed(
+      {"--config", folder.file("plant.toml", small_plant), "--input",
+       folder.file("h.csv",
+                   "time,t_in,t_out\n2026-01-01T00:00:00Z,12,7\n2026-01-01T00:00:01Z,12,7\n")});
+  EXPECT_EQ(outcome.code, 0);
+  EXPECT_THAT(outcome.err, Not(HasSubstr("apart")));
 }
 
 struct BadHistory {

@@ -13,6 +13,7 @@ namespace {
 
 using testing::health_model;
 using testing::synthetic_history;
+using testing::values_of;
 
 // A machine that obeys the entropy form to the last bit, so that the fit has a right answer.
 double power_by_the_form_W(const Conditions& c) {
@@ -121,16 +122,6 @@ TEST(CoverageFactor, IsStudents) {
   EXPECT_NEAR(coverage_factor(baseline), 2.0003, 1e-4);
 }
 
-QuantityValues means_of(const Window& window) {
-  QuantityValues values;
-  for (std::size_t i = 0; i < quantity_count; ++i) {
-    if (const auto& v = window.values.at(i)) {
-      values[static_cast<Quantity>(i)] = Measured{.value = v->mean_SI, .u = v->u_SI};
-    }
-  }
-  return values;
-}
-
 // The 95 % prediction interval on windows that the baseline has not seen. One baseline in ten may
 // hold fewer than it promises, for its own scatter is an estimate: 0.90 allows for that.
 class Prediction : public ::testing::TestWithParam<std::uint64_t> {};
@@ -143,7 +134,7 @@ TEST_P(Prediction, HoldsTheWindowsToCome) {
   double held = 0.0;
   for (const Window& window : windows) {
     if (state.baseline) {
-      if (const auto should = expected_power(state, means_of(window))) {
+      if (const auto should = expected_power(state, values_of(window))) {
         inside_guard += 1.0;
         const double off_W = window[Quantity::power]->mean_SI - should->power_W.value;
         held += std::abs(off_W) <= should->half_width_W ? 1.0 : 0.0;

@@ -19,6 +19,7 @@ using testing::Played;
 using testing::played;
 using testing::synthetic_history;
 using testing::SyntheticOptions;
+using testing::values_of;
 
 std::vector<std::uint8_t> bytes(HealthState state) {
   ArchiveWriter writer;
@@ -38,16 +39,6 @@ SyntheticOptions worn_from(double day) {
   options.days = day + 30.0;
   options.ills = [day](double now) { return Ills{.wear = now < day ? 0.0 : 0.07}; };
   return options;
-}
-
-QuantityValues values_of(const Window& window) {
-  QuantityValues values;
-  for (std::size_t i = 0; i < quantity_count; ++i) {
-    if (const auto& v = window.values.at(i)) {
-      values[static_cast<Quantity>(i)] = Measured{.value = v->mean_SI, .u = v->u_SI};
-    }
-  }
-  return values;
 }
 
 TEST(Learning, SaysWhatItLacks) {

@@ -258,6 +258,16 @@ Window synthetic_window(const SyntheticOptions& options, const Weather& weather,
   return window;
 }
 
+QuantityValues values_of(const Window& window) {
+  QuantityValues values;
+  for (std::size_t i = 0; i < quantity_count; ++i) {
+    if (const auto& mean = window.values.at(i)) {
+      values[static_cast<Quantity>(i)] = Measured{.value = mean->mean_SI, .u = mean->u_SI};
+    }
+  }
+  return values;
+}
+
 std::vector<Window> synthetic_history(const SyntheticOptions& options) {
   SeededNormal noise{options.seed};
   const std::vector<Weather> weather = weather_of(options, noise);

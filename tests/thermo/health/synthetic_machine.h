@@ -7,6 +7,7 @@
 #include "thermo/health/features.h"
 #include "thermo/health/seeded_normal.h"
 #include "thermo/measure/window.h"
+#include "thermo/quantity.h"
 #include "thermo/reading.h"
 
 #include <array>
@@ -57,6 +58,9 @@ struct SyntheticOptions {
 
 // The power in truth, without noise; W.
 [[nodiscard]] double true_power_W(const Weather& weather, const Ills& ills);
+
+// The window's means as if one scan had given them.
+[[nodiscard]] QuantityValues values_of(const Window& window);
 
 [[nodiscard]] std::vector<Window> synthetic_history(const SyntheticOptions& options);
 
