@@ -2,8 +2,9 @@
 
 #include <algorithm>
 #include <cstddef>
+#include <iterator>
 #include <string>
-#include <vector>
+#include <utility>
 
 namespace lostwork {
 namespace {
@@ -16,33 +17,31 @@ std::string small_letters(std::string_view text) {
   return out;
 }
 
-// Optimal string alignment: the least number of changes, losses, gains and swaps of neighbours.
-std::size_t distance(const std::string& a, const std::string& b) {
-  std::vector<std::vector<std::size_t>> d(a.size() + 1, std::vector<std::size_t>(b.size() + 1));
-  for (std::size_t i = 0; i <= a.size(); ++i) {
-    for (std::size_t j = 0; j <= b.size(); ++j) {
-      if (i == 0 || j == 0) {
-        d[i][j] = i + j;
-        continue;
-      }
-      const std::size_t change = a[i - 1] == b[j - 1] ? 0 : 1;
-      d[i][j] = std::min({d[i - 1][j] + 1, d[i][j - 1] + 1, d[i - 1][j - 1] + change});
-      if (i > 1 && j > 1 && a[i - 1] == b[j - 2] && a[i - 2] == b[j - 1]) {
-        d[i][j] = std::min(d[i][j], d[i - 2][j - 2] + 1);
-      }
-    }
-  }
-  return d[a.size()][b.size()];
+// Where two names differ: what is left of each between their common beginning and common end.
+std::pair<std::string_view, std::string_view> differing_parts(std::string_view a,
+                                                              std::string_view b) {
+  const auto [a_first, b_first] = std::mismatch(a.begin(), a.end(), b.begin(), b.end());
+  const auto [a_last, b_last] = std::mismatch(a.rbegin(), std::make_reverse_iterator(a_first),
+                                              b.rbegin(), std::make_reverse_iterator(b_first));
+  return {
+      {a_first, a_last.base()},
+      {b_first, b_last.base()}
+  };
 }
 
 }  // namespace
 
 bool is_slip_of(std::string_view written, std::string_view meant) {
-  const std::size_t most = std::min<std::size_t>(2, meant.size() / 3);
-  if (written == meant || written.size() > meant.size() + most) {
+  if (written == meant) {
     return false;
   }
-  return distance(small_letters(written), small_letters(meant)) <= most;
+  const std::string a = small_letters(written);
+  const std::string b = small_letters(meant);
+  const auto [wrong, right] = differing_parts(a, b);
+  const bool are_swapped =
+      wrong.size() == 2 && right.size() == 2 && wrong[0] == right[1] && wrong[1] == right[0];
+  const std::size_t most = std::min<std::size_t>(2, meant.size() / 3);
+  return are_swapped || std::max(wrong.size(), right.size()) <= most;
 }
 
 }  // namespace lostwork

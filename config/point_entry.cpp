@@ -166,13 +166,12 @@ std::vector<Accuracy> accuracies(const std::vector<AccuracyEntry>& entries, Unit
                                  Problems& problems) {
   std::vector<Accuracy> out;
   for (const AccuracyEntry& entry : entries) {
-    if (entry.sensor_class) {
-      if (const auto found = pt100_class_named(*entry.sensor_class)) {
-        out.emplace_back(*found);
-      } else {
-        refuse(problems, place, std::string{key} + ".class",
-               R"(one of "Pt100 AA", "Pt100 A", "Pt100 B", "Pt100 C")", *entry.sensor_class);
-      }
+    const auto pt100 = entry.sensor_class ? pt100_class_named(*entry.sensor_class) : std::nullopt;
+    if (pt100) {
+      out.emplace_back(*pt100);
+    } else if (entry.sensor_class) {
+      refuse(problems, place, std::string{key} + ".class",
+             R"(one of "Pt100 AA", "Pt100 A", "Pt100 B", "Pt100 C")", *entry.sensor_class);
     }
     if (entry.limit) {
       out.emplace_back(AccuracyLimit{.limit = *entry.limit});

@@ -42,6 +42,7 @@ TEST_P(IsNoSlipOf, LeavesOtherNamesAlone) {
 INSTANTIATE_TEST_SUITE_P(Names, IsNoSlipOf,
                          ::testing::Values(Slip{"TheNameItself", "unit", "unit"},
                                            Slip{"AShortName", "u", "id"},
+                                           Slip{"WrongInTwoPlaces", "ragistar", "register"},
                                            Slip{"AnotherName", "comment", "offset"},
                                            Slip{"ALongerName", "registers_of_it", "register"}),
                          [](const auto& param) { return std::string{param.param.name}; });
