@@ -6,9 +6,11 @@
 #include "daemon/probe.h"
 #include "thermo/cycle/requirements.h"
 
+#include <algorithm>
 #include <array>
 #include <cmath>
 #include <iomanip>
+#include <iterator>
 #include <sstream>
 #include <string>
 #include <vector>
@@ -109,13 +111,14 @@ bool share_a_register(const PointSpec& a, const PointSpec& b) {
 }
 
 void print_shared_registers(const std::vector<PointSpec>& points, std::ostream& out) {
-  for (std::size_t i = 0; i < points.size(); ++i) {
-    for (std::size_t k = i + 1; k < points.size(); ++k) {
-      if (share_a_register(points[i], points[k])) {
-        out << "note: points " << points[i].id << " and " << points[k].id
-            << " read the same register of device "
-            << std::get<FromRegister>(points[i].source).device << '\n';
-      }
+  for (auto point = points.begin(); point != points.end(); ++point) {
+    const auto next =
+        std::find_if(std::next(point), points.end(),
+                     [&point](const PointSpec& other) { return share_a_register(*point, other); });
+    if (next != points.end()) {
+      out << "note: points " << point->id << " and " << next->id
+          << " read the same register of device " << std::get<FromRegister>(point->source).device
+          << '\n';
     }
   }
 }

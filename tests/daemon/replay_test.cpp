@@ -100,7 +100,8 @@ std::string rp1043_file(std::string_view streams) {
   std::string text{rp1043_plant};
   if (!streams.empty()) {
     const auto from = text.find("cold_stream");
-    text.replace(from, std::string::npos, streams);
+    text.erase(from);
+    text += streams;
   }
   for (const Column& c : rp1043_columns) {
     text += std::string{"[[point]]\nid = \""} + c.point + "\"\nmachine = \"chiller\"\nrole = \"" +
