@@ -192,17 +192,21 @@ Broken broken_in(const std::vector<LawWindow>& windows) {
 
 // The sensors that all the broken laws have in common; all of theirs where they share none.
 Roles suspects_of(std::uint32_t broken, const MachineModel& machine) {
-  Roles any;
-  for (std::size_t law = 0; law < law_count; ++law) {
-    append(any, (broken & bit(law)) != 0U ? sensors_of(static_cast<Law>(law), machine) : Roles{});
-  }
-  Roles common = any;
+  std::vector<Roles> sensors;  // of each broken law
   for (std::size_t law = 0; law < law_count; ++law) {
     if ((broken & bit(law)) != 0U) {
-      const Roles roles = sensors_of(static_cast<Law>(law), machine);
-      std::erase_if(common, [&](Role role) { return !contains(roles, role); });
+      sensors.push_back(sensors_of(static_cast<Law>(law), machine));
     }
   }
+  Roles any;
+  for (const Roles& roles : sensors) {
+    append(any, roles);
+  }
+  Roles common = any;
+  std::erase_if(common, [&sensors](Role role) {
+    return !std::all_of(sensors.begin(), sensors.end(),
+                        [role](const Roles& roles) { return contains(roles, role); });
+  });
   return common.empty() ? any : common;
 }
 

@@ -102,8 +102,8 @@ TEST(LeastSquares, GivesAFiniteAnswerWhenAColumnSaysNothingNew) {
 
 TEST(LeastSquares, RefusesAFigureThatIsNotFinite) {
   const LinearSystem s{
-      .columns = 1, .a = {1.0, NAN},
-           .b = {1.0, 2.0}
+      .columns = 1, .a = {1.0, std::nan("")},
+           .b = {1.0,          2.0}
   };
   const auto x = least_squares(s, Sign::any);
   ASSERT_FALSE(x.has_value());
