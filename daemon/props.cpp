@@ -16,7 +16,7 @@ namespace lostwork {
 namespace {
 
 constexpr std::array options{
-    Option{"--fluid", "NAME","R134a or R718 (also called water); --list shows all"                             },
+    Option{"--fluid", "NAME",      "as --list names it, or water"                             },
     Option{"--given", "PAIR",
            "what is given: T,p T,x p,x p,h or p,s (degC, kPa absolute, kJ/kg, kJ/(kg K), vapour "
            "quality 0..1)"                                                                    },

@@ -225,7 +225,7 @@ TEST(Props, RefusesAFileThatIsNotThere) {
 TEST(Props, RefusesAnUnknownFluid) {
   const Outcome outcome = props({"--fluid", "R999", "--given", "T,p", "20", "100"});
   EXPECT_EQ(outcome.code, 2);
-  EXPECT_THAT(outcome.err, HasSubstr("--fluid R999: no such fluid; known: R134a R718"));
+  EXPECT_THAT(outcome.err, HasSubstr("--fluid R999: no such fluid; known: R134a R1234yf "));
 }
 
 TEST(Props, RefusesAnUnknownPair) {

@@ -23,6 +23,18 @@ struct GaussianTerm {
   double epsilon;
 };
 
+// n tau^t delta^d exp(eta (delta - epsilon)^2 + 1 / (beta (tau - gamma)^2 + b))
+struct AssociatingTerm {
+  double n;
+  double t;
+  int d;
+  double eta;  // negative
+  double beta;
+  double gamma;
+  double epsilon;
+  double b;
+};
+
 // n D^b delta exp(-c_ (delta - 1)^2 - d_ (tau - 1)^2), where D = theta^2 + b_ ((delta - 1)^2)^a and
 // theta = (1 - tau) + a_ ((delta - 1)^2)^(1 / (2 beta)). The papers print a_ to d_ as A to D.
 struct NonAnalyticTerm {
@@ -90,6 +102,7 @@ struct Fluid {
   IdealPart ideal;
   PowerTerms residual;
   std::span<const GaussianTerm> gaussian;
+  std::span<const AssociatingTerm> associating;
   std::span<const NonAnalyticTerm> non_analytic;
   Ancillary saturation_pressure;   // good to 0.05 % everywhere below the critical point
   Ancillary saturated_liquid_rho;  // good to 0.2 % below 0.98 of the critical temperature, else 5 %

@@ -41,6 +41,16 @@ Factor bell(double x, double x_power, double k, double width, double centre) {
           first * first - k - 2.0 * width * x * x};
 }
 
+// x^t exp(1 / (beta (x - gamma)^2 + b))
+Factor association(double x, double x_power, const AssociatingTerm& term) {
+  const double distance = x - term.gamma;
+  const double g = 1.0 / (term.beta * distance * distance + term.b);
+  const double g_x = -2.0 * term.beta * distance * g * g;
+  const double g_xx = 2.0 * term.beta * g * g * (4.0 * term.beta * distance * distance * g - 1.0);
+  const double first = term.t + x * g_x;
+  return {x_power * std::exp(g), first, first * first - term.t + x * x * g_xx};
+}
+
 // D = theta^2 + B q^a with q = (delta - 1)^2 and its derivatives; none divides by delta - 1.
 struct Distance {
   double value, d, dd, t, dt, tt;
@@ -109,10 +119,18 @@ void Isotherm::set_groups() {
     Coefficient sum{0.0, 0.0, 0.0};
     for (std::size_t i = group.begin; i < group.end; ++i) {
       const PowerTerms::Row& row = terms.rows()[i];
-      const double value = row.n * powers[row.power];
+      double value = row.n * powers[row.power];
+      double first = row.t;  // tau f' / f
+      double bend = 0.0;     // of the decay: m^2 tau^m
+      if (row.m > 0.0) {
+        const double tau_m = power(log_tau_, row.m);
+        value *= std::exp(-tau_m);
+        first -= row.m * tau_m;
+        bend = row.m * row.m * tau_m;
+      }
       sum.c += value;
-      sum.ct += value * row.t;
-      sum.ctt += value * row.t * (row.t - 1.0);
+      sum.ct += value * first;
+      sum.ctt += value * (first * (first - 1.0) - bend);
     }
     groups_[count++] = sum;
   }
@@ -182,6 +200,19 @@ void Isotherm::add_gaussians(double delta, Reduced& sum) const {
 }
 
 template <bool with_tau>
+void Isotherm::add_associating(double delta, Reduced& sum) const {
+  for (const AssociatingTerm& term : fluid_->associating) {
+    const double off_delta = delta - term.epsilon;
+    if (term.eta * off_delta * off_delta < nothing) {
+      continue;
+    }
+    const Factor by_delta = bell(delta, std::pow(delta, term.d), term.d, -term.eta, term.epsilon);
+    const Factor by_tau = association(tau_, power(log_tau_, term.t), term);
+    add_product<with_tau>(term.n, by_delta, by_tau, sum);
+  }
+}
+
+template <bool with_tau>
 void Isotherm::add_non_analytic(double delta, Reduced& sum) const {
   for (const NonAnalyticTerm& term : fluid_->non_analytic) {
     const double off_delta = delta - 1.0;
@@ -216,6 +247,7 @@ Reduced Isotherm::residual(double delta) const {
   Reduced sum{};
   add_powers<true>(delta, sum);
   add_gaussians<true>(delta, sum);
+  add_associating<true>(delta, sum);
   add_non_analytic<true>(delta, sum);
   return sum;
 }
@@ -236,6 +268,7 @@ Slope Isotherm::slope(double rho_kgm3) const {
   Reduced sum{};
   add_powers<false>(delta, sum);
   add_gaussians<false>(delta, sum);
+  add_associating<false>(delta, sum);
   add_non_analytic<false>(delta, sum);
   const double rt_Jkg = fluid_->gas_constant_JkgK * T_K_;
   return {rho_kgm3 * rt_Jkg * (1.0 + sum.d), rt_Jkg * (1.0 + 2.0 * sum.d + sum.dd), sum.a};

@@ -59,10 +59,10 @@ class Isotherm {
   [[nodiscard]] Reduced residual(double delta) const;
 
  private:
-  struct Coefficient {  // of one delta^d exp(-delta^l)
-    double c;           // sum n tau^t
-    double ct;          // sum n t tau^t
-    double ctt;         // sum n t (t - 1) tau^t
+  struct Coefficient {  // of one delta^d exp(-delta^l): sums of f = n tau^t exp(-tau^m)
+    double c;           // f
+    double ct;          // tau f'
+    double ctt;         // tau^2 f''
   };
   void set_ideal_part();
   void set_groups();
@@ -73,6 +73,8 @@ class Isotherm {
   void add_powers(double delta, Reduced& sum) const;
   template <bool with_tau>
   void add_gaussians(double delta, Reduced& sum) const;
+  template <bool with_tau>
+  void add_associating(double delta, Reduced& sum) const;
   template <bool with_tau>
   void add_non_analytic(double delta, Reduced& sum) const;
 

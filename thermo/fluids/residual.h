@@ -15,12 +15,14 @@
 
 namespace lostwork {
 
-// n tau^t delta^d exp(-delta^l); for l = 0 the exponential is absent (it is not exp(-1)).
+// n tau^t delta^d exp(-delta^l) exp(-tau^m); for l = 0 or m = 0 that exponential is absent (it is
+// not exp(-1)).
 struct HelmholtzTerm {
   double n;
   double t;
   int d;
   int l;
+  double m = 0.0;
 };
 
 class PowerTerms {
@@ -35,6 +37,7 @@ class PowerTerms {
   struct Row {
     double n;
     double t;
+    double m;
     std::size_t power;
   };
   struct Group {  // all terms of one delta^d exp(-delta^l): rows [begin, end)
@@ -50,7 +53,8 @@ class PowerTerms {
     std::size_t end;
   };
 
-  // Throws where a row does not fit (too many rows, d < 1, l < 0): at compile time, an error there.
+  // Throws where a row does not fit (too many rows, a negative d, l or m): at compile time, an
+  // error there.
   constexpr explicit PowerTerms(std::span<const HelmholtzTerm> terms) {
     if (terms.size() > capacity) {
       throw std::invalid_argument("too many rows in an equation of state");
@@ -120,7 +124,7 @@ class PowerTerms {
     }
   }
   constexpr void add(const HelmholtzTerm& term) {
-    if (term.d < 1 || term.l < 0) {
+    if (term.d < 0 || term.l < 0 || term.m < 0.0) {
       throw std::invalid_argument("a row of an equation of state");
     }
     const auto d = static_cast<std::size_t>(term.d);
@@ -132,7 +136,7 @@ class PowerTerms {
     if (new_decay || groups_[group_count_ - 1].delta_power != d) {
       groups_[group_count_++] = {static_cast<double>(term.d), d, row_count_, row_count_};
     }
-    rows_[row_count_++] = {term.n, term.t, power_of(term.t)};
+    rows_[row_count_++] = {term.n, term.t, term.m, power_of(term.t)};
     groups_[group_count_ - 1].end = row_count_;
     decays_[decay_count_ - 1].end = group_count_;
     highest_ = std::max({highest_, d, l});

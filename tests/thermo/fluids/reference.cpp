@@ -1,11 +1,10 @@
 #include "tests/thermo/fluids/reference.h"
 
 #include <algorithm>
-#include <array>
+#include <cctype>
 #include <fstream>
-#include <ostream>
+#include <iterator>
 #include <stdexcept>
-#include <utility>
 
 namespace lostwork {
 namespace {
@@ -57,36 +56,33 @@ std::optional<double> ReferenceTable::number(std::size_t row, std::string_view c
   return cell.empty() ? std::nullopt : std::optional{std::stod(cell)};
 }
 
-std::vector<ReferenceState> reference_states() {
-  constexpr std::array<std::pair<std::string_view, std::string_view>, 2> files{
-      {{"R134a", "r134a_states.csv"}, {"R718", "r718_states.csv"}}
-  };
+std::vector<ReferenceState> reference_states(std::string_view fluid) {
+  std::string file = test_name(fluid);
+  for (char& letter : file) {
+    letter = static_cast<char>(std::tolower(static_cast<unsigned char>(letter)));
+  }
+  const ReferenceTable table{file + "_states.csv"};
   std::vector<ReferenceState> states;
-  for (const auto& [fluid, file] : files) {
-    const ReferenceTable table{file};
-    for (std::size_t row = 0; row < table.size(); ++row) {
-      states.push_back({.fluid = std::string{fluid},
-                        .row = row,
-                        .kind = table.text(row, "kind"),
-                        .T_K = table.number(row, "T_K").value(),
-                        .p_Pa = table.number(row, "p_Pa").value(),
-                        .quality = table.number(row, "Q"),
-                        .rho_kgm3 = table.number(row, "rho_kg_m3").value(),
-                        .h_Jkg = table.number(row, "h_J_kg").value(),
-                        .s_JkgK = table.number(row, "s_J_kgK").value(),
-                        .cp_JkgK = table.number(row, "cp_J_kgK"),
-                        .sound_speed_w = table.number(row, "w_m_s")});
-    }
+  for (std::size_t row = 0; row < table.size(); ++row) {
+    states.push_back({.row = row,
+                      .kind = table.text(row, "kind"),
+                      .T_K = table.number(row, "T_K").value(),
+                      .p_Pa = table.number(row, "p_Pa").value(),
+                      .quality = table.number(row, "Q"),
+                      .rho_kgm3 = table.number(row, "rho_kg_m3").value(),
+                      .h_Jkg = table.number(row, "h_J_kg").value(),
+                      .s_JkgK = table.number(row, "s_J_kgK").value(),
+                      .cp_JkgK = table.number(row, "cp_J_kgK"),
+                      .sound_speed_w = table.number(row, "w_m_s")});
   }
   return states;
 }
 
-std::string name_of(const ReferenceState& state) {
-  return state.fluid + "_" + state.kind + "_" + std::to_string(state.row);
-}
-
-void PrintTo(const ReferenceState& state, std::ostream* out) {
-  *out << name_of(state);
+std::string test_name(std::string_view fluid) {
+  std::string out;
+  std::copy_if(fluid.begin(), fluid.end(), std::back_inserter(out),
+               [](unsigned char letter) { return std::isalnum(letter) != 0; });
+  return out;
 }
 
 }  // namespace lostwork

@@ -22,9 +22,8 @@ class ReferenceTable {
   std::vector<std::vector<std::string>> rows_;
 };
 
-// One row of a table of states, with the place to name a test by.
+// One row of a table of states.
 struct ReferenceState {
-  std::string fluid;
   std::size_t row;
   std::string kind;
   double T_K;
@@ -36,10 +35,11 @@ struct ReferenceState {
   std::optional<double> cp_JkgK;
   std::optional<double> sound_speed_w;
 };
-[[nodiscard]] std::vector<ReferenceState> reference_states();  // of every fluid with a table
 
-// "R134a_sat_liquid_12"
-[[nodiscard]] std::string name_of(const ReferenceState& state);
-void PrintTo(const ReferenceState& state, std::ostream* out);
+// The table of one fluid: R1234ze(E) has r1234zee_states.csv.
+[[nodiscard]] std::vector<ReferenceState> reference_states(std::string_view fluid);
+
+// The letters and digits of a name, as a test can be called: R1234zeE.
+[[nodiscard]] std::string test_name(std::string_view fluid);
 
 }  // namespace lostwork

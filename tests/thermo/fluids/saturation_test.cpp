@@ -1,11 +1,14 @@
 #include "thermo/fluids/saturation.h"
 
 #include "tests/thermo/fluids/grid.h"
+#include "tests/thermo/fluids/reference.h"
 #include "thermo/fluids/ancillary.h"
 #include "thermo/fluids/fluids.h"
 
 #include <algorithm>
 #include <cmath>
+#include <iterator>
+#include <vector>
 
 #include <gtest/gtest.h>
 
@@ -32,9 +35,9 @@ TEST_P(OnTheLine, BothDensitiesHaveTheSamePressure) {
   const Isotherm isotherm{fluid(), T_K()};
   const double liquid_Pa = isotherm.slope(here().liquid.rho_kgm3).p_Pa;
   const double vapour_Pa = isotherm.slope(here().vapour.rho_kgm3).p_Pa;
-  // In the liquid the pressure is what is left of terms of about 30 rho R T: 1e-14 of that.
+  // In the liquid the pressure is what is left of terms of 30 to 50 rho R T: 1e-14 of that.
   const double rounding_Pa = 1e-14 * here().liquid.rho_kgm3 * fluid().gas_constant_JkgK * T_K();
-  EXPECT_NEAR(liquid_Pa, vapour_Pa, 1e-10 * vapour_Pa + 30.0 * rounding_Pa);
+  EXPECT_NEAR(liquid_Pa, vapour_Pa, 1e-10 * vapour_Pa + 50.0 * rounding_Pa);
 }
 
 TEST_P(OnTheLine, PressureLeadsBackToTheTemperature) {
@@ -71,11 +74,24 @@ TEST_P(OnTheLine, TheFirstGuessesAreAsGoodAsTheSearchExpects) {
 INSTANTIATE_TEST_SUITE_P(AllFluids, OnTheLine, testing::ValuesIn(saturation_grid()),
                          [](const auto& tested) { return name_of(tested.param); });
 
-TEST(SaturationOfR134a, HasTheReferenceStateOfTheRefrigerationInstitute) {
-  const Saturation ice_point = saturation_at_T(r134a, 273.15).value();
+class ReferenceStateOfFluid : public testing::TestWithParam<const Fluid*> {};
+
+TEST_P(ReferenceStateOfFluid, IsThatOfTheRefrigerationInstitute) {
+  // To what double precision leaves of h.
+  const Saturation ice_point = saturation_at_T(*GetParam(), 273.15).value();
   EXPECT_NEAR(ice_point.liquid.h_Jkg, 200e3, 1e-3);
   EXPECT_NEAR(ice_point.liquid.s_JkgK, 1e3, 1e-5);
 }
+
+std::vector<const Fluid*> refrigerants() {
+  std::vector<const Fluid*> all;
+  std::copy_if(fluids().begin(), fluids().end(), std::back_inserter(all),
+               [](const Fluid* fluid) { return fluid->reference_state == "IIR"; });
+  return all;
+}
+
+INSTANTIATE_TEST_SUITE_P(Refrigerants, ReferenceStateOfFluid, testing::ValuesIn(refrigerants()),
+                         [](const auto& tested) { return test_name(tested.param->name); });
 
 TEST(SaturationOfWater, HasNoEnergyAndNoEntropyAtTheTriplePoint) {
   // IAPWS R6-95(2018), section 6: the release's own rounding leaves 1e-6 J/kg and 1e-8 J/(kg K).
