@@ -19,8 +19,8 @@ struct Boundary {
   Saturation at;
   Number p_Pa;
 
-  [[nodiscard]] Number dew_T_K() const { return chain(at.vapour.T_K, at.dT_dp, p_Pa); }
-  [[nodiscard]] Number bubble_T_K() const { return chain(at.liquid.T_K, at.dT_dp, p_Pa); }
+  [[nodiscard]] Number dew_T_K() const { return chain(at.vapour.T_K, at.dew_dT_dp, p_Pa); }
+  [[nodiscard]] Number bubble_T_K() const { return chain(at.liquid.T_K, at.bubble_dT_dp, p_Pa); }
 };
 
 Result<Boundary> boundary(const Fluid& fluid, const Result<Number>& p_Pa, Role role) {

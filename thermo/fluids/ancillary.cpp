@@ -1,5 +1,6 @@
 #include "thermo/fluids/ancillary.h"
 
+#include <algorithm>
 #include <cmath>
 
 namespace lostwork {
@@ -39,6 +40,19 @@ LogAncillary log_ancillary(const Ancillary& ancillary, double T_K) {
     case Ancillary::Form::one_plus_sum: break;
   }
   return {std::log1p(sum), sum_by_inverse_T / (1.0 + sum)};
+}
+
+double boiling_T_K(const Ancillary& pressure, double p_Pa, int steps) {
+  // ln(p) against 1/T is nearly a straight line, and its slope nearly that of all fluids: 7.6 in
+  // reduced units.
+  const double wanted = std::log(p_Pa / pressure.y_scale_SI);
+  const double least = (1.0 + 1e-9) / pressure.scale_T_K;
+  double inverse = std::max((1.0 - wanted / 7.6) / pressure.scale_T_K, least);
+  for (int step = 0; step < steps; ++step) {
+    const LogAncillary here = log_ancillary(pressure, 1.0 / inverse);
+    inverse = std::max(inverse + (wanted - here.log_value) / here.by_inverse_T, least);
+  }
+  return 1.0 / inverse;
 }
 
 }  // namespace lostwork

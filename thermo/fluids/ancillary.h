@@ -1,4 +1,4 @@
-// First guesses on the saturation line.
+// Short equations on the saturation line.
 //
 // Pure. T below the ancillary's own scale_T_K.
 #pragma once
@@ -15,5 +15,10 @@ struct LogAncillary {
   double by_inverse_T;  // its derivative by 1/T, K
 };
 [[nodiscard]] LogAncillary log_ancillary(const Ancillary& ancillary, double T_K);
+
+// Where an ancillary for the pressure has this one, after so many steps of Newton's method: two are
+// a first guess, boiling_steps reach double precision. p below y_scale_SI.
+constexpr int boiling_steps = 8;
+[[nodiscard]] double boiling_T_K(const Ancillary& pressure, double p_Pa, int steps);
 
 }  // namespace lostwork

@@ -107,6 +107,9 @@ struct Fluid {
   Ancillary saturation_pressure;   // good to 0.05 % everywhere below the critical point
   Ancillary saturated_liquid_rho;  // good to 0.2 % below 0.98 of the critical temperature, else 5 %
   Ancillary saturated_vapour_rho;  // the same
+  // Of a blend that is treated as one fluid: its dew line. Then saturation_pressure is its bubble
+  // line, and both are the published ones and not guesses.
+  const Ancillary* dew_pressure = nullptr;
 };
 
 }  // namespace lostwork

@@ -9,8 +9,9 @@ namespace lostwork {
 namespace {
 
 constexpr auto all = std::to_array<const Fluid*>(
-    {&r134a,     &r1234yf, &r1234ze_e, &r32,  &r125, &r143a, &r152a, &r22,  &r123, &r245fa,
-     &r1233zd_e, &r227ea,  &r13i1,     &r290, &r600, &r600a, &r1270, &r717, &r744, &r718});
+    {&r134a, &r1234yf, &r1234ze_e, &r32,    &r125,  &r143a, &r152a, &r22,
+     &r123,  &r245fa,  &r1233zd_e, &r227ea, &r13i1, &r290,  &r600,  &r600a,
+     &r1270, &r717,    &r744,      &r410a,  &r407c, &r404a, &r507a, &r718});
 
 }  // namespace
 

@@ -25,6 +25,10 @@ extern const Fluid r600a;
 extern const Fluid r1270;
 extern const Fluid r717;
 extern const Fluid r744;
+extern const Fluid r410a;
+extern const Fluid r407c;
+extern const Fluid r404a;
+extern const Fluid r507a;
 extern const Fluid r718;
 
 }  // namespace lostwork

@@ -188,17 +188,7 @@ Result<TwoPhases> halved_at_p(const Fluid& fluid, double p_Pa, double guess_T_K)
 }  // namespace
 
 TwoPhases guessed_phases_at_p(const Fluid& fluid, double p_Pa) {
-  // ln(p) against 1/T is nearly a straight line, and its slope nearly that of all fluids: 7.6 in
-  // reduced units; two steps of Newton's method on the ancillary do the rest.
-  const double highest_T_K = std::min(fluid.critical_T_K, fluid.saturation_pressure.scale_T_K);
-  const double wanted = std::log(p_Pa / fluid.saturation_pressure.y_scale_SI);
-  const double least = (1.0 + 1e-9) / highest_T_K;
-  double inverse = std::max((1.0 - wanted / 7.6) / highest_T_K, least);
-  for (int step = 0; step < 2; ++step) {
-    const LogAncillary here = log_ancillary(fluid.saturation_pressure, 1.0 / inverse);
-    inverse = std::max(inverse + (wanted - here.log_value) / here.by_inverse_T, least);
-  }
-  return guessed_phases(fluid, 1.0 / inverse, p_Pa);
+  return guessed_phases(fluid, boiling_T_K(fluid.saturation_pressure, p_Pa, 2), p_Pa);
 }
 
 double lowest_T_K(const Fluid& fluid) {

@@ -74,9 +74,9 @@ Result<Saturation> saturation_of(const Isotherm& isotherm, const TwoPhases& at) 
   liquid->quality = 0.0;
   vapour->quality = 1.0;
   const double v_gap = 1.0 / at.vapour_kgm3 - 1.0 / at.liquid_kgm3;
-  return Saturation{.liquid = *liquid,
-                    .vapour = *vapour,
-                    .dT_dp = at.T_K * v_gap / (vapour->h_Jkg - liquid->h_Jkg)};
+  const double clapeyron = at.T_K * v_gap / (vapour->h_Jkg - liquid->h_Jkg);
+  return Saturation{
+      .liquid = *liquid, .vapour = *vapour, .bubble_dT_dp = clapeyron, .dew_dT_dp = clapeyron};
 }
 
 State mixed(const Saturation& at, double quality) {
@@ -90,7 +90,7 @@ State mixed(const Saturation& at, double quality) {
     return liquid + quality * (vapour - liquid);
   };
   return {.phase = Phase::two_phase,
-          .T_K = at.liquid.T_K,
+          .T_K = between(at.liquid.T_K, at.vapour.T_K),
           .p_Pa = at.liquid.p_Pa,
           .rho_kgm3 = 1.0 / between(1.0 / at.liquid.rho_kgm3, 1.0 / at.vapour.rho_kgm3),
           .h_Jkg = between(at.liquid.h_Jkg, at.vapour.h_Jkg),

@@ -26,6 +26,7 @@ namespace lostwork {
 [[nodiscard]] Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa,
                                          double rho_kgm3);
 [[nodiscard]] Result<Saturation> saturation_of(const Isotherm& isotherm, const TwoPhases& at);
+// The phases of one pressure, by mass; between the temperatures of a blend, in proportion.
 [[nodiscard]] State mixed(const Saturation& at, double quality);
 
 }  // namespace lostwork

@@ -2,6 +2,7 @@
 
 #include "thermo/fluids/ancillary.h"
 #include "thermo/fluids/density.h"
+#include "thermo/fluids/pseudo_pure.h"
 #include "thermo/fluids/single_phase.h"
 
 #include <array>
@@ -67,6 +68,9 @@ Result<State> state(const Fluid& fluid, const GivenTp& given) {
     const Phase phase = given.p_Pa >= fluid.critical_p_Pa ? Phase::supercritical : Phase::vapour;
     return on_branch(isotherm, Branch::fluid, phase, given.p_Pa);
   }
+  if (is_pseudo_pure(fluid)) {
+    return pseudo_pure_state(fluid, given);
+  }
   return side(isotherm, given.p_Pa).and_then([&](Phase phase) {
     return on_branch(isotherm, phase == Phase::liquid ? Branch::liquid : Branch::vapour, phase,
                      given.p_Pa);
@@ -77,7 +81,11 @@ Result<State> state(const Fluid& fluid, const GivenTx& given) {
   if (!is_quality(given.quality)) {
     return refusal(ReasonCode::implausible, "quality", given.quality);
   }
-  return mixed_state(saturation_at_T(fluid, given.T_K), given.quality);
+  if (const auto reason = refused_T(fluid, given.T_K)) {
+    return tl::unexpected{*reason};
+  }
+  return is_pseudo_pure(fluid) ? pseudo_pure_state(fluid, given)
+                               : mixed_state(saturation_at_T(fluid, given.T_K), given.quality);
 }
 
 Result<State> state(const Fluid& fluid, const GivenPx& given) {
@@ -91,6 +99,9 @@ Result<Saturation> saturation_at_T(const Fluid& fluid, double T_K) {
   if (const auto reason = refused_T(fluid, T_K)) {
     return tl::unexpected{*reason};
   }
+  if (is_pseudo_pure(fluid)) {
+    return pseudo_pure_at_T(fluid, T_K);
+  }
   const Isotherm isotherm{fluid, T_K};
   return two_phases(isotherm).and_then(
       [&](const TwoPhases& at) { return saturation_of(isotherm, at); });
@@ -99,6 +110,9 @@ Result<Saturation> saturation_at_T(const Fluid& fluid, double T_K) {
 Result<Saturation> saturation_at_p(const Fluid& fluid, double p_Pa) {
   if (const auto reason = refused_p(fluid, p_Pa)) {
     return tl::unexpected{*reason};
+  }
+  if (is_pseudo_pure(fluid)) {
+    return pseudo_pure_at_p(fluid, p_Pa);
   }
   return two_phases_at_p(fluid, p_Pa).and_then([&](const TwoPhases& at) {
     return saturation_of(Isotherm{fluid, at.T_K}, at);

@@ -66,11 +66,14 @@ struct GivenPs {
 [[nodiscard]] Result<State> state(const Fluid& fluid, const GivenPh& given);
 [[nodiscard]] Result<State> state(const Fluid& fluid, const GivenPs& given);
 
-// Both phases in equilibrium, and how the boiling point moves with pressure.
+// The liquid on its bubble line and the vapour on its dew line, and how their temperatures move
+// with pressure, K/Pa. A pure fluid has one line and both phases are in equilibrium; those of a
+// blend have one pressure but two temperatures, or one temperature but two pressures.
 struct Saturation {
   State liquid;
   State vapour;
-  double dT_dp;  // K/Pa, Clapeyron
+  double bubble_dT_dp;
+  double dew_dT_dp;
 };
 [[nodiscard]] Result<Saturation> saturation_at_T(const Fluid& fluid, double T_K);
 [[nodiscard]] Result<Saturation> saturation_at_p(const Fluid& fluid, double p_Pa);

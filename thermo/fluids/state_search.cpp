@@ -1,5 +1,6 @@
 // States by pressure and enthalpy or entropy: the temperature is searched along the isobar.
 #include "thermo/fluids/density.h"
+#include "thermo/fluids/pseudo_pure.h"
 #include "thermo/fluids/quick_search.h"
 #include "thermo/fluids/single_phase.h"
 
@@ -114,9 +115,9 @@ Result<State> across(const Fluid& fluid, const Wanted& wanted, const Saturation&
   if (wanted.value_SI >= liquid && wanted.value_SI <= vapour) {
     return mixed(line, (wanted.value_SI - liquid) / (vapour - liquid));
   }
-  const double boiling_T_K = line.liquid.T_K;
-  const TwoPhases phases{boiling_T_K, wanted.p_Pa, line.liquid.rho_kgm3, line.vapour.rho_kgm3};
   const bool is_liquid = wanted.value_SI < liquid;
+  const double boiling_T_K = is_liquid ? line.liquid.T_K : line.vapour.T_K;
+  const TwoPhases phases{boiling_T_K, wanted.p_Pa, line.liquid.rho_kgm3, line.vapour.rho_kgm3};
   const std::optional<State> quick =
       is_liquid ? quick_liquid(fluid, wanted, phases) : quick_vapour(fluid, wanted, phases);
   if (quick) {
@@ -152,7 +153,8 @@ Result<State> on_isobar(const Fluid& fluid, const Wanted& wanted) {
     return refusal(ReasonCode::implausible, wanted.blame, wanted.value_SI);
   }
   if (wanted.p_Pa < fluid.critical_p_Pa) {
-    const std::optional<State> quick = quick_state(fluid, wanted);
+    const std::optional<State> quick =
+        is_pseudo_pure(fluid) ? std::nullopt : quick_state(fluid, wanted);
     return quick ? Result<State>{*quick} : below_critical(fluid, wanted);
   }
   return search(fluid, wanted,

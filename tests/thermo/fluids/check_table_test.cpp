@@ -43,6 +43,12 @@ Tolerance tolerance_of(const Fluid& fluid) {
   if (fluid.name == "R123") {  // it takes the ideal gas at 456.82 K, not 456.831 K
     return {.T = 1e-7, .p = 1e-6, .rho = 1e-7, .h_Jkg = 2.3, .s_JkgK = 6e-3, .cp = 2e-5};
   }
+  if (fluid.name == "R507A") {  // its reducing density is 6e-6 larger, which tells near critical
+    return {.T = 1e-7, .p = 1e-6, .rho = 1e-5, .h_Jkg = 6.0, .s_JkgK = 2e-2, .cp = 1e-3};
+  }
+  if (fluid.name == "R407C") {  // one coefficient, of t 8.7, has two digits less
+    return {.T = 1e-7, .p = 1e-6, .rho = 1e-7, .h_Jkg = 0.2, .s_JkgK = 1e-3, .cp = 2e-7};
+  }
   return {};
 }
 
@@ -135,7 +141,7 @@ TEST_P(CheckTable, NamesThePhase) {
     // Denser than critical but colder is a liquid here, whatever the table calls it; on the line
     // itself the last digit of the table decides.
     const bool is_cold = row.kind == "supercritical" && row.T_K < fluid().critical_T_K;
-    if (!row.kind.starts_with("sat")) {
+    if (!row.kind.starts_with("sat") && row.kind != "bubble" && row.kind != "dew") {
       EXPECT_EQ(name(found->phase), is_cold ? "liquid" : row.kind);
     }
   }

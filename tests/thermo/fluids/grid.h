@@ -19,6 +19,7 @@ struct SinglePhasePlace {
 [[nodiscard]] std::vector<SinglePhasePlace> single_phase_grid();
 [[nodiscard]] GivenTp given(const SinglePhasePlace& place);
 
+// On the line of a pure fluid.
 struct SaturationPlace {
   std::string_view fluid;
   double of_critical_T;

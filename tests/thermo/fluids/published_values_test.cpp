@@ -23,7 +23,7 @@ struct PublishedValue {
   std::string fluid;
   std::string locator;
   std::optional<double> T_K;
-  std::string given;  // sat, sat_p, rho_kg_m3, rho_molar_mol_m3 or p_Pa
+  std::string given;  // sat, bubble, dew, sat_p, rho_kg_m3, rho_molar_mol_m3 or p_Pa
   double given_value;
   std::string phase;
   std::string property;
@@ -79,7 +79,18 @@ std::optional<Point> single_phase_point(const Fluid& fluid, const PublishedValue
   return rho ? std::optional{Point{T_K, *rho}} : std::nullopt;
 }
 
+std::optional<Point> point_on_line(const Fluid& fluid, const PublishedValue& value) {
+  const auto at = saturation_at_T(fluid, value.T_K.value());
+  if (!at) {
+    return std::nullopt;
+  }
+  return Point{*value.T_K, value.given == "bubble" ? at->liquid.rho_kgm3 : at->vapour.rho_kgm3};
+}
+
 std::optional<Point> point(const Fluid& fluid, const PublishedValue& value) {
+  if (value.given == "bubble" || value.given == "dew") {
+    return point_on_line(fluid, value);
+  }
   if (value.given != "sat" && value.given != "sat_p") {
     return single_phase_point(fluid, value);
   }

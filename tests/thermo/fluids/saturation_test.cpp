@@ -50,7 +50,7 @@ TEST_P(OnTheLine, TemperatureMovesWithPressureAsClapeyronSays) {
   const double above_Pa = saturation_at_T(fluid(), T_K() + step_K)->liquid.p_Pa;
   const double below_Pa = saturation_at_T(fluid(), T_K() - step_K)->liquid.p_Pa;
   // The difference's own error, (step T)^2 p'''/6, is below 1e-6 of the slope.
-  EXPECT_NEAR(here().dT_dp * (above_Pa - below_Pa) / (2.0 * step_K), 1.0, 1e-6);
+  EXPECT_NEAR(here().dew_dT_dp * (above_Pa - below_Pa) / (2.0 * step_K), 1.0, 1e-6);
 }
 
 TEST_P(OnTheLine, AHairOfTemperatureDecidesThePhase) {
