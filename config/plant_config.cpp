@@ -101,6 +101,8 @@ ModelStream model_stream(const StreamEntry& entry) {
   ModelStream out;
   if (entry.rho_cp_J_m3K) {
     out.fluid = ConstantStream{.rho_cp_SI = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0};
+  } else {
+    out.fluid = stream_named(entry.fluid).value_or(WaterStream{});
   }
   return out;
 }

@@ -2,6 +2,7 @@
 
 #include "config/plant_keys.h"
 #include "config/toml_reader.h"
+#include "thermo/streams/stream.h"
 
 namespace lostwork {
 namespace {
@@ -95,15 +96,21 @@ StreamEntry take_stream(const TomlPlace& place, std::string_view key) {
   if (node == nullptr) {
     return out;
   }
-  static constexpr std::array<std::string_view, 1> liquids{"water"};
   static constexpr std::array stream_keys{
-      Key<StreamEntry>{       "fluid",        &StreamEntry::fluid,               "the liquid",false,   0,   0, liquids},
-      Key<StreamEntry>{"rho_cp_J_m3K", &StreamEntry::rho_cp_J_m3K, "volumetric heat capacity",
-                       false, 1e5, 1e7        },
+      Key<StreamEntry>{       "fluid",        &StreamEntry::fluid,               "the liquid"},
+      Key<StreamEntry>{ "rho_cp_J_m3K", &StreamEntry::rho_cp_J_m3K, "volumetric heat capacity",                                                       false, 1e5, 1e7},
   };
   if (const toml::table* table = node->as_table()) {
     EntryPlace inner{.name = place.entry.name + '.' + std::string{key}};
-    return read_by_keys<StreamEntry>({*table, inner, place.problems}, stream_keys);
+    const TomlPlace inside{*table, inner, place.problems};
+    out = read_by_keys<StreamEntry>(inside, stream_keys);
+    const toml::node* fluid = node_of(*table, "fluid");
+    if (fluid != nullptr && inner.sound("fluid") && !stream_named(out.fluid)) {
+      inside.refuse(
+          *fluid, "fluid",
+          "\"water\", or a solution by mass like \"propylene glycol 30 %\": " + brine_names());
+    }
+    return out;
   }
   place.refuse(*node, key, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }");
   return out;

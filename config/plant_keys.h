@@ -79,15 +79,15 @@ inline constexpr std::array device{
 
 inline constexpr std::array machine{
     Key<MachineEntry>{                      "id",                       &MachineEntry::id,"a name for files and addresses",true},
-    Key<MachineEntry>{                    "name",                     &MachineEntry::name,                                  "as people call it",  true},
-    Key<MachineEntry>{                    "duty",                     &MachineEntry::duty,                                "what it is paid for", false, 0, 0, duties},
-    Key<MachineEntry>{                    "kind",                     &MachineEntry::kind,                                        "its circuit", false, 0, 0, machine_kinds},
-    Key<MachineEntry>{              "evaporator",               &MachineEntry::evaporator,                           "dry expansion or flooded", false, 0,
+    Key<MachineEntry>{                    "name",                     &MachineEntry::name,              "as people call it",  true},
+    Key<MachineEntry>{                    "duty",                     &MachineEntry::duty,            "what it is paid for", false, 0, 0, duties},
+    Key<MachineEntry>{                    "kind",                     &MachineEntry::kind,                    "its circuit", false, 0, 0, machine_kinds},
+    Key<MachineEntry>{              "evaporator",               &MachineEntry::evaporator,       "dry expansion or flooded", false, 0,
                       0, evaporators},
-    Key<MachineEntry>{             "refrigerant",              &MachineEntry::refrigerant,                        "see `lostwork props --list`",
+    Key<MachineEntry>{             "refrigerant",              &MachineEntry::refrigerant,    "see `lostwork props --list`",
                       true},
-    Key<MachineEntry>{                  "scan_s",                   &MachineEntry::scan_s,                                   "period of a scan", false, 1, 3600},
-    Key<MachineEntry>{          "rated_power_kW",           &MachineEntry::rated_power_kW,                           "electrical, at full load",
+    Key<MachineEntry>{                  "scan_s",                   &MachineEntry::scan_s,               "period of a scan", false, 1, 3600},
+    Key<MachineEntry>{          "rated_power_kW",           &MachineEntry::rated_power_kW,       "electrical, at full load",
                       true, 0.01, 100000},
     Key<MachineEntry>{             "casing_loss",                                 Other{},
                       "heat from the casing as a share of the power, where it cannot be measured: "
@@ -96,8 +96,12 @@ inline constexpr std::array machine{
                       "temperature around the casing", false, -50, 70},
     Key<MachineEntry>{                  "accept",                   &MachineEntry::accept,
                       "take what is learned as healthy without a person", false, 0, 0, acceptances},
-    Key<MachineEntry>{             "cold_stream",                                 Other{}, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }"      },
-    Key<MachineEntry>{              "hot_stream",                                 Other{}, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }"      },
+    Key<MachineEntry>{             "cold_stream",                                 Other{},
+                      "{ fluid = \"water\" }, { fluid = \"propylene glycol 30 %\" } or { "
+                      "rho_cp_J_m3K = 4.18e6 }"      },
+    Key<MachineEntry>{              "hot_stream",                                 Other{},
+                      "{ fluid = \"water\" }, { fluid = \"propylene glycol 30 %\" } or { "
+                      "rho_cp_J_m3K = 4.18e6 }"      },
 };
 
 inline constexpr std::array pair{

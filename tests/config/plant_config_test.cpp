@@ -132,6 +132,15 @@ TEST(PlantFrom, NoSafetyLimitIsBuiltIn) {
   EXPECT_THAT(plant->machines[0].limits, IsEmpty());
 }
 
+TEST(PlantFrom, GivesAStreamTheSolutionThatItNames) {
+  const auto plant =
+      plant_of(std::string{machine} + "hot_stream = { fluid = \"propylene glycol 30 %\" }\n");
+  ASSERT_TRUE(plant);
+  const MachineModel& model = plant->machines[0].model;
+  EXPECT_TRUE(std::holds_alternative<WaterStream>(model.cold.fluid));
+  EXPECT_TRUE(std::holds_alternative<Brine>(model.hot.fluid));
+}
+
 struct Bad {
   const char* name;
   std::string text;
@@ -154,6 +163,10 @@ INSTANTIATE_TEST_SUITE_P(
         Bad{"AnUnknownRole", point({.role = "cold.inlet", .more = {}}), "role",
             "cold.in.temperature"},
         Bad{"AUnitThatDoesNotFitTheRole", point({.unit = "kW", .more = {}}), "unit", "degC degF K"},
+        Bad{"AStreamThatItDoesNotKnow", "hot_stream = { fluid = \"treacle 30 %\" }\n",
+            "hot_stream.fluid", "propylene glycol up to 60 %"},
+        Bad{"ASolutionBeyondItsFit", "hot_stream = { fluid = \"calcium chloride 31 %\" }\n",
+            "hot_stream.fluid", "calcium chloride up to 30 %"},
         Bad{"AnUnknownDevice", point({.more = "device = \"pannel\"\nregister = 1"}), "device",
             "the id of a device"},
         Bad{"ADeviceWithoutRegister", point({.more = "device = \"panel\""}), "register",
@@ -226,7 +239,7 @@ bus = "plk"
 id = "chiller-1"
 name = "Chiller 1"
 duty = "freezing"
-refrigerant = "R410A"
+refrigerant = "R999"
 rated_power_kW = 95
 [[pair]]
 id = "ch1_cold"
@@ -283,7 +296,7 @@ TEST(ReadPlant, TellsEveryProblemOnceInTheOrderOfTheFile) {
           problem_at(6, "web.listen", "0.0.0.0:8470", "this computer itself"),
           problem_at(12, "device \"panel\".bus", "plk", "one of plc"),
           problem_at(16, "machine \"chiller-1\".duty", "freezing", "\"cooling\", \"heating\""),
-          problem_at(17, "machine \"chiller-1\".refrigerant", "R410A", "R134a"),
+          problem_at(17, "machine \"chiller-1\".refrigerant", "R999", "R134a"),
           problem_at(26, "point \"power\".unit", "degC", "for power one of kW W"),
           problem_at(28, "point \"power\".regsiter", "100", "no such key"),
           problem_at(44, "point \"cold_out\".pair", "ch1_clod", "exactly two points"),

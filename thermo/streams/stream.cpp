@@ -4,9 +4,11 @@
 #include "thermo/fluids/fluids.h"
 
 #include <array>
+#include <charconv>
 #include <cmath>
 #include <cstddef>
 #include <numbers>
+#include <system_error>
 
 namespace lostwork {
 namespace {
@@ -124,7 +126,53 @@ Result<StreamState> state_of(const ConstantStream& stream, double T_K) {
                      .expansion_beta = 0.0};
 }
 
+Result<StreamState> state_of(const Brine& brine, double T_K) {
+  if (T_K < brine.freezing_T_K || T_K > brine.max_T_K) {
+    return Refusal{
+        Reason{ReasonCode::outside_fluid, "temperature", T_K}
+    };
+  }
+  // h and s are the integrals of cp and cp / T, from the ice point.
+  const auto& [c0, c1, c2, c3] = brine.cp_JkgK;
+  const auto h = [&](double T) {
+    return T * (c0 + T * (c1 / 2.0 + T * (c2 / 3.0 + T * c3 / 4.0)));
+  };
+  const auto s = [&](double T) {
+    return c0 * std::log(T) + T * (c1 + T * (c2 / 2.0 + T * c3 / 3.0));
+  };
+  const auto& [r0, r1, r2, r3] = brine.rho_kgm3;
+  const double rho = r0 + T_K * (r1 + T_K * (r2 + T_K * r3));
+  return StreamState{.rho_kgm3 = rho,
+                     .h_Jkg = h(T_K) - h(ice_point_T_K),
+                     .s_JkgK = s(T_K) - s(ice_point_T_K),
+                     .cp_JkgK = c0 + T_K * (c1 + T_K * (c2 + T_K * c3)),
+                     .expansion_beta = -(r1 + T_K * (2.0 * r2 + 3.0 * T_K * r3)) / rho};
+}
+
 }  // namespace
+
+std::optional<StreamFluid> stream_named(std::string_view name) {
+  if (name == "water") {
+    return WaterStream{};
+  }
+  // "<solution> <percent> %"
+  constexpr std::string_view unit = " %";
+  if (!name.ends_with(unit)) {
+    return std::nullopt;
+  }
+  name.remove_suffix(unit.size());
+  const std::size_t space = name.rfind(' ');
+  if (space == std::string_view::npos) {
+    return std::nullopt;
+  }
+  const std::string_view number = name.substr(space + 1);
+  double percent = 0.0;
+  const auto [end, error] = std::from_chars(number.data(), number.data() + number.size(), percent);
+  if (error != std::errc{} || end != number.data() + number.size()) {
+    return std::nullopt;
+  }
+  return brine(name.substr(0, space), percent);
+}
 
 Result<StreamState> stream_state(const StreamFluid& fluid, double T_K) {
   if (!(std::isfinite(T_K) && T_K > 0.0)) {

@@ -4,7 +4,10 @@
 #pragma once
 
 #include "thermo/result.h"
+#include "thermo/streams/brine.h"
 
+#include <optional>
+#include <string_view>
 #include <variant>
 
 namespace lostwork {
@@ -15,14 +18,17 @@ namespace lostwork {
 // higher pressure, and differences of h agree with those at 600 kPa to 3e-4.
 struct WaterStream {};
 
-// A liquid of constant volumetric heat capacity, for sources that state one and for brines until
-// they have their own equation.
+// A liquid of constant volumetric heat capacity, for sources that state one.
 struct ConstantStream {
   double rho_cp_SI = 4.18e6;  // J/(m3 K)
   double rho_kgm3 = 1000.0;   // turns a mass flow into a volume flow, nothing else
 };
 
-using StreamFluid = std::variant<WaterStream, ConstantStream>;
+using StreamFluid = std::variant<WaterStream, ConstantStream, Brine>;
+
+// "water", or a solution of brine.h with its concentration: "propylene glycol 30 %". nullopt where
+// it is neither.
+[[nodiscard]] std::optional<StreamFluid> stream_named(std::string_view name);
 
 struct StreamState {
   double rho_kgm3;
@@ -33,7 +39,7 @@ struct StreamState {
 };
 
 // Refuses: implausible (not finite), outside_fluid (water outside 0.01..150 degC: it freezes or
-// boils).
+// boils; a solution below its freezing point or above its published fit).
 [[nodiscard]] Result<StreamState> stream_state(const StreamFluid& fluid, double T_K);
 
 }  // namespace lostwork
