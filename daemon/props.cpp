@@ -8,6 +8,7 @@
 #include <algorithm>
 #include <array>
 #include <charconv>
+#include <cmath>
 #include <optional>
 #include <string>
 #include <utility>
@@ -16,21 +17,23 @@ namespace lostwork {
 namespace {
 
 constexpr std::array options{
-    Option{"--fluid", "NAME",      "as --list names it, or water"                             },
-    Option{"--given", "PAIR",
+    Option{     "--fluid", "NAME", "as --list names it, or water"                                  },
+    Option{     "--given", "PAIR",
            "what is given: T,p T,x p,x p,h or p,s (degC, kPa absolute, kJ/kg, kJ/(kg K), vapour "
-           "quality 0..1)"                                                                    },
-    Option{"--input", "FILE",
+           "quality 0..1)"                                                                         },
+    Option{     "--input", "FILE",
            "a CSV of points instead of the two values; its header names the two columns, for "
-           "example T_degC,p_kPa"                                                             },
-    Option{"--exact",     "", "the full equation of state; it is what every answer comes from"},
-    Option{ "--list",     "",          "the fluids: composition, safety class, limits, source"},
+           "example T_degC,p_kPa"                                                                  },
+    Option{     "--exact",     "", "the full equation of state; it is what every answer comes from"},
+    Option{"--saturation",     "",   "a table of both saturation lines instead: FROM TO STEP, degC"},
+    Option{      "--list",     "",          "the fluids: composition, safety class, limits, source"},
 };
 
 constexpr CommandLine command{
     .usage =
         "lostwork props --fluid NAME --given PAIR VALUE VALUE\n"
         "       lostwork props --fluid NAME --given PAIR --input FILE\n"
+        "       lostwork props --fluid NAME --saturation FROM TO STEP\n"
         "       lostwork props --list",
     .purpose =
         "Properties of a fluid as CSV, one row a point. A point without an answer has an empty "
@@ -40,7 +43,7 @@ constexpr CommandLine command{
         "saturated liquid at 0 degC; water: u = s = 0 for saturated liquid at the triple point.\n"
         "The safety classes of --list are for orientation; the local code decides.",
     .options = options,
-    .most_values = 2};
+    .most_values = 3};
 
 // Ten significant digits.
 std::string digits(double value) {
@@ -55,6 +58,9 @@ std::string digits(const std::optional<double>& value) {
 
 double celsius(double T_K) {
   return T_K - 273.15;
+}
+double kelvin(double T_degC) {
+  return T_degC + 273.15;
 }
 double kilo(double SI) {
   return SI / 1e3;
@@ -125,6 +131,65 @@ void write_list(std::ostream& out) {
   }
 }
 
+struct SaturationRange {  // degC
+  double from;
+  double to;
+  double step;
+};
+
+void write_saturation_row(std::ostream& out, const Fluid& fluid, double T_degC) {
+  out << fluid.name << ',' << digits(T_degC);
+  const Result<Saturation> at = saturation_at_T(fluid, kelvin(T_degC));
+  if (!at) {
+    out << ",,,,,,,,,," << csv_field(sentence(fluid, at.error())) << '\n';
+    return;
+  }
+  const State& liquid = at->liquid;
+  const State& vapour = at->vapour;
+  for (const double value :
+       {kilo(liquid.p_Pa), kilo(vapour.p_Pa), liquid.rho_kgm3, vapour.rho_kgm3, kilo(liquid.h_Jkg),
+        kilo(vapour.h_Jkg), kilo(vapour.h_Jkg - liquid.h_Jkg), kilo(liquid.s_JkgK),
+        kilo(vapour.s_JkgK)}) {
+    out << ',' << digits(value);
+  }
+  out << ",\n";
+}
+
+void write_saturation(std::ostream& out, const Fluid& fluid, const SaturationRange& range) {
+  out << "fluid,T_degC,p_bubble_kPa,p_dew_kPa,rho_liquid_kg_m3,rho_vapour_kg_m3,h_liquid_kJ_kg,"
+         "h_vapour_kJ_kg,h_evaporation_kJ_kg,s_liquid_kJ_kgK,s_vapour_kJ_kgK,reason\n";
+  const auto steps = static_cast<int>(std::floor((range.to - range.from) / range.step + 1e-9));
+  for (int i = 0; i <= steps; ++i) {
+    write_saturation_row(out, fluid, range.from + i * range.step);
+  }
+}
+
+tl::expected<SaturationRange, std::string> saturation_range(const Arguments& arguments) {
+  constexpr std::string_view form =
+      "--saturation needs FROM TO STEP in degC, with TO not below FROM, STEP at least 0.001 and "
+      "not more than 100000 rows";
+  if (arguments.values.size() != 3) {
+    return tl::unexpected{std::to_string(arguments.values.size()) + " values; " +
+                          std::string{form}};
+  }
+  std::array<double, 3> given{};
+  for (std::size_t i = 0; i < given.size(); ++i) {
+    const auto value = finite_number(arguments.values[i]);
+    if (!value) {
+      return tl::unexpected{std::string{arguments.values[i]} + ": not a finite number; " +
+                            std::string{form}};
+    }
+    given[i] = *value;
+  }
+  const auto [from, to, step] = given;
+  constexpr double most_rows = 1e5;
+  if (!(to >= from && step >= 1e-3 && (to - from) / step < most_rows)) {
+    return tl::unexpected{digits(from) + ' ' + digits(to) + ' ' + digits(step) + ": " +
+                          std::string{form}};
+  }
+  return SaturationRange{from, to, step};
+}
+
 struct Question {
   const Fluid* fluid;
   const GivenPair* pair;
@@ -165,17 +230,28 @@ tl::expected<std::vector<Point>, std::string> points_of(const Arguments& argumen
   return std::vector{point};
 }
 
-tl::expected<Question, std::string> question_of(const Arguments& arguments) {
-  const auto fluid_name = arguments.value("--fluid");
-  const auto pair_name = arguments.value("--given");
-  if (!fluid_name || !pair_name) {
-    return tl::unexpected{std::string{fluid_name ? "--given" : "--fluid"} +
-                          ": is required (or --list); see lostwork props --help"};
+tl::unexpected<std::string> missing(std::string_view option) {
+  return tl::unexpected{std::string{option} +
+                        ": is required (or --list); see lostwork props --help"};
+}
+
+tl::expected<const Fluid*, std::string> fluid_of(const Arguments& arguments) {
+  const auto name = arguments.value("--fluid");
+  if (!name) {
+    return missing("--fluid");
   }
-  const Fluid* const fluid = fluid_named(*fluid_name);
+  const Fluid* const fluid = fluid_named(*name);
   if (fluid == nullptr) {
-    return tl::unexpected{"--fluid " + std::string{*fluid_name} +
+    return tl::unexpected{"--fluid " + std::string{*name} +
                           ": no such fluid; known:" + known_fluids()};
+  }
+  return fluid;
+}
+
+tl::expected<Question, std::string> question_of(const Arguments& arguments, const Fluid& fluid) {
+  const auto pair_name = arguments.value("--given");
+  if (!pair_name) {
+    return missing("--given");
   }
   const GivenPair* const pair = given_pair(*pair_name);
   if (pair == nullptr) {
@@ -183,8 +259,19 @@ tl::expected<Question, std::string> question_of(const Arguments& arguments) {
                           ": allowed is T,p T,x p,x p,h or p,s"};
   }
   return points_of(arguments, *pair).map([&](std::vector<Point> points) {
-    return Question{fluid, pair, std::move(points)};
+    return Question{&fluid, pair, std::move(points)};
   });
+}
+
+int answer_saturation(const Arguments& arguments, const Fluid& fluid, std::ostream& out,
+                      std::ostream& err) {
+  const auto range = saturation_range(arguments);
+  if (!range) {
+    err << "lostwork props: " << range.error() << '\n';
+    return 2;
+  }
+  write_saturation(out, fluid, *range);
+  return 0;
 }
 
 }  // namespace
@@ -199,7 +286,15 @@ int props_command(std::span<const std::string_view> arguments, std::ostream& out
     write_list(out);
     return 0;
   }
-  const auto question = question_of(*parsed);
+  const auto fluid = fluid_of(*parsed);
+  if (!fluid) {
+    err << "lostwork props: " << fluid.error() << '\n';
+    return 2;
+  }
+  if (parsed->has("--saturation")) {
+    return answer_saturation(*parsed, **fluid, out, err);
+  }
+  const auto question = question_of(*parsed, **fluid);
   if (!question) {
     err << "lostwork props: " << question.error() << '\n';
     return 2;

@@ -252,10 +252,49 @@ TEST(Props, RefusesAQuestionWithoutAFluid) {
   EXPECT_THAT(props({"--given", "T,p", "20", "100"}).err, HasSubstr("--fluid: is required"));
 }
 
+TEST(Props, PrintsASaturationTable) {
+  const Outcome outcome = props({"--fluid", "propane", "--saturation", "-50", "10", "30"});
+  EXPECT_EQ(outcome.code, 0);
+  EXPECT_EQ(outcome.cells(2)[1], "-20");
+  EXPECT_EQ(outcome.cells(3)[1], "10");
+  EXPECT_TRUE(outcome.cells(4).empty());
+  // Lemmon, McLinden, Wagner 2009, table A1, 223.15 K, to the digits printed.
+  const auto cells = outcome.cells(1);
+  EXPECT_EQ(cells[1], "-50");
+  EXPECT_NEAR(number(cells[2]), 70.569, 5e-4);
+  EXPECT_EQ(cells[2], cells[3]);
+  EXPECT_NEAR(number(cells[4]), 589.90, 5e-3);
+  EXPECT_NEAR(number(cells[5]), 1.7270, 5e-5);
+  EXPECT_NEAR(number(cells[6]), 82.753, 5e-4);
+  EXPECT_NEAR(number(cells[7]), 516.48, 5e-3);
+}
+
+TEST(Props, PrintsBothLinesOfABlend) {
+  const auto cells = props({"--fluid", "R407C", "--saturation", "0", "0", "1"}).cells(1);
+  EXPECT_GT(number(cells[2]), 1.2 * number(cells[3]));
+  EXPECT_NEAR(number(cells[6]), 200.0, 1e-4);
+}
+
+TEST(Props, SaysWhyARowOfTheTableIsEmpty) {
+  const Outcome outcome = props({"--fluid", "R744", "--saturation", "20", "40", "20"});
+  EXPECT_EQ(outcome.code, 0);
+  EXPECT_THAT(outcome.cells(2)[11], StartsWith("outside_fluid: temperature 40 degC"));
+}
+
+TEST(Props, RefusesASaturationTableWithoutAnEnd) {
+  for (const std::string_view step : {"0", "-1", "1e-9", "nan", "x"}) {
+    const Outcome outcome = props({"--fluid", "R134a", "--saturation", "0", "20", step});
+    EXPECT_EQ(outcome.code, 2) << step;
+    EXPECT_THAT(outcome.err, HasSubstr("FROM TO STEP")) << step;
+  }
+  EXPECT_EQ(props({"--fluid", "R134a", "--saturation", "20", "0", "1"}).code, 2);
+  EXPECT_EQ(props({"--fluid", "R134a", "--saturation", "0", "20"}).code, 2);
+}
+
 TEST(Props, ListsEveryFluidWithItsSource) {
   const Outcome outcome = props({"--list"});
   EXPECT_EQ(outcome.code, 0);
-  EXPECT_THAT(outcome.out, HasSubstr("R134a,R-134a,"));
+  EXPECT_THAT(outcome.out, HasSubstr("R134a,,"));
   EXPECT_THAT(outcome.out, HasSubstr("doi:10.1063/1.555958"));
   EXPECT_THAT(outcome.out, HasSubstr("R718,water,"));
   EXPECT_THAT(outcome.out, HasSubstr("doi:10.1063/1.1461829"));

@@ -82,7 +82,7 @@ struct Ancillary {
 };
 
 struct Fluid {
-  std::string_view name;          // as on the command line: "R134a"
+  std::string_view name;          // "R134a"
   std::string_view second_name;   // also accepted; empty if none
   std::string_view composition;   // for people: the substance, or mass fractions
   std::string_view safety_class;  // for people, with its source; never a safety setting

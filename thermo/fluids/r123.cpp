@@ -113,7 +113,7 @@ constexpr IdealPart ideal_part{.a1 = -13.232465921590089,
 
 constinit const Fluid r123{
     .name = "R123",
-    .second_name = "R-123",
+    .second_name = "",
     .composition = "2,2-dichloro-1,1,1-trifluoroethane CHCl2CF3 100 %",
     .safety_class = "B1 (ASHRAE 34 / ISO 817)",
     .source = "Younglove and McLinden 1994, doi:10.1063/1.555950",

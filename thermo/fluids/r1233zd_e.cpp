@@ -92,7 +92,7 @@ constexpr IdealPart ideal_part{.a1 = -17.291229931887596,
 
 constinit const Fluid r1233zd_e{
     .name = "R1233zd(E)",
-    .second_name = "R-1233zd(E)",
+    .second_name = "R1233zd",
     .composition = "trans-1-chloro-3,3,3-trifluoroprop-1-ene CF3CH=CHCl (E) 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Akasaka and Lemmon 2022, doi:10.1063/5.0083026",

@@ -92,7 +92,7 @@ constexpr IdealPart ideal_part{.a1 = -12.081525543189045,
 
 constinit const Fluid r1234yf{
     .name = "R1234yf",
-    .second_name = "R-1234yf",
+    .second_name = "",
     .composition = "2,3,3,3-tetrafluoroprop-1-ene CF3CF=CH2 100 %",
     .safety_class = "A2L (ASHRAE 34 / ISO 817)",
     .source = "Lemmon and Akasaka 2022, doi:10.1007/s10765-022-03015-y",

@@ -91,7 +91,7 @@ constexpr IdealPart ideal_part{.a1 = -12.558346671052897,
 
 constinit const Fluid r1234ze_e{
     .name = "R1234ze(E)",
-    .second_name = "R-1234ze(E)",
+    .second_name = "R1234ze",
     .composition = "trans-1,3,3,3-tetrafluoroprop-1-ene CF3CH=CHF (E) 100 %",
     .safety_class = "A2L (ASHRAE 34 / ISO 817)",
     .source = "Thol and Lemmon 2016, doi:10.1007/s10765-016-2040-6",

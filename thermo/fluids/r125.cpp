@@ -94,7 +94,7 @@ constexpr IdealPart ideal_part{.a1 = 37.267451692030704,
 
 constinit const Fluid r125{
     .name = "R125",
-    .second_name = "R-125",
+    .second_name = "",
     .composition = "pentafluoroethane CHF2CF3 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon and Jacobsen 2005, doi:10.1063/1.1797813",

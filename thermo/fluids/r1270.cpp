@@ -97,7 +97,7 @@ constexpr IdealPart ideal_part{.a1 = -5.182327965145156,
 
 constinit const Fluid r1270{
     .name = "R1270",
-    .second_name = "R-1270",
+    .second_name = "propylene",
     .composition = "propylene C3H6 100 %",
     .safety_class = "A3 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon et al. 2010, personal communication",

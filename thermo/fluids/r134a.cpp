@@ -77,7 +77,7 @@ constexpr double critical_rho_kgm3 = 511.9451132818318;
 
 constinit const Fluid r134a{
     .name = "R134a",
-    .second_name = "R-134a",
+    .second_name = "",
     .composition = "1,1,1,2-tetrafluoroethane CF3CH2F 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Tillner-Roth and Baehr 1994, doi:10.1063/1.555958",

@@ -81,7 +81,7 @@ constexpr IdealPart ideal_part{.a1 = -24.691499784827855,
 
 constinit const Fluid r13i1{
     .name = "R13I1",
-    .second_name = "R-13I1",
+    .second_name = "",
     .composition = "trifluoroiodomethane CF3I 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817, from memory)",
     .source = "Lemmon and Span 2015, doi:10.1021/acs.jced.5b00684",

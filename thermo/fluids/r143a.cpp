@@ -92,7 +92,7 @@ constexpr IdealPart ideal_part{.a1 = 5.903048119431655,
 
 constinit const Fluid r143a{
     .name = "R143a",
-    .second_name = "R-143a",
+    .second_name = "",
     .composition = "1,1,1-trifluoroethane CF3CH3 100 %",
     .safety_class = "A2L (ASHRAE 34 / ISO 817)",
     .source = "Lemmon and Jacobsen 2000, doi:10.1063/1.1318909",

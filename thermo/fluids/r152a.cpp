@@ -113,7 +113,7 @@ constexpr IdealPart ideal_part{.a1 = -7.950506771630748,
 
 constinit const Fluid r152a{
     .name = "R152a",
-    .second_name = "R-152a",
+    .second_name = "",
     .composition = "1,1-difluoroethane CH3CHF2 100 %",
     .safety_class = "A2 (ASHRAE 34 / ISO 817)",
     .source = "Outcalt and McLinden 1996, doi:10.1063/1.555979",

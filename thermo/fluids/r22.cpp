@@ -117,7 +117,7 @@ constexpr IdealPart ideal_part{.a1 = -11.853420922629606,
 
 constinit const Fluid r22{
     .name = "R22",
-    .second_name = "R-22",
+    .second_name = "",
     .composition = "chlorodifluoromethane CHClF2 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Kamei et al. 1995, doi:10.1007/BF02081283",

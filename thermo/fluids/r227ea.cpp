@@ -92,7 +92,7 @@ constexpr IdealPart ideal_part{.a1 = -15.829112413683866,
 
 constinit const Fluid r227ea{
     .name = "R227ea",
-    .second_name = "R-227ea",
+    .second_name = "",
     .composition = "1,1,1,2,3,3,3-heptafluoropropane CF3CHFCF3 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon and Span 2015, doi:10.1021/acs.jced.5b00684",

@@ -91,7 +91,7 @@ constexpr IdealPart ideal_part{.a1 = -13.382410670873416,
 
 constinit const Fluid r245fa{
     .name = "R245fa",
-    .second_name = "R-245fa",
+    .second_name = "",
     .composition = "1,1,1,3,3-pentafluoropropane CF3CH2CHF2 100 %",
     .safety_class = "B1 (ASHRAE 34 / ISO 817)",
     .source = "Akasaka et al. 2015, doi:10.1063/1.4913493",

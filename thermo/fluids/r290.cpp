@@ -94,7 +94,7 @@ constexpr IdealPart ideal_part{.a1 = -4.97058316343512,
 
 constinit const Fluid r290{
     .name = "R290",
-    .second_name = "R-290",
+    .second_name = "propane",
     .composition = "propane C3H8 100 %",
     .safety_class = "A3 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon et al. 2009, doi:10.1021/je900217v",

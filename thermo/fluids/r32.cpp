@@ -91,7 +91,7 @@ constexpr IdealPart ideal_part{.a1 = -8.25809596345087,
 
 constinit const Fluid r32{
     .name = "R32",
-    .second_name = "R-32",
+    .second_name = "",
     .composition = "difluoromethane CH2F2 100 %",
     .safety_class = "A2L (ASHRAE 34 / ISO 817)",
     .source = "Tillner-Roth and Yokozeki 1997, doi:10.1063/1.556002",

@@ -104,7 +104,7 @@ constexpr IdealPart ideal_part{.a1 = 7.004082520045578,
 
 constinit const Fluid r404a{
     .name = "R404A",
-    .second_name = "R-404A",
+    .second_name = "",
     .composition = "R125/R143a/R134a 44/52/4 % by mass",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",

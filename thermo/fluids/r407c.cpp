@@ -103,7 +103,7 @@ constexpr IdealPart ideal_part{.a1 = 2.1319157017113177,
 
 constinit const Fluid r407c{
     .name = "R407C",
-    .second_name = "R-407C",
+    .second_name = "",
     .composition = "R32/R125/R134a 23/25/52 % by mass",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",

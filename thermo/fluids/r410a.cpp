@@ -103,7 +103,7 @@ constexpr IdealPart ideal_part{.a1 = 36.88706245454444,
 
 constinit const Fluid r410a{
     .name = "R410A",
-    .second_name = "R-410A",
+    .second_name = "",
     .composition = "R32/R125 50/50 % by mass",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",

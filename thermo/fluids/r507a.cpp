@@ -104,7 +104,7 @@ constexpr IdealPart ideal_part{.a1 = 9.935454173781414,
 
 constinit const Fluid r507a{
     .name = "R507A",
-    .second_name = "R-507A",
+    .second_name = "",
     .composition = "R125/R143a 50/50 % by mass",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",

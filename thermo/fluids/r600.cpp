@@ -101,7 +101,7 @@ constexpr IdealPart ideal_part{.a1 = -5.424959593897867,
 
 constinit const Fluid r600{
     .name = "R600",
-    .second_name = "R-600",
+    .second_name = "butane",
     .composition = "n-butane C4H10 100 %",
     .safety_class = "A3 (ASHRAE 34 / ISO 817)",
     .source = "Buecker and Wagner 2006, doi:10.1063/1.1901687",

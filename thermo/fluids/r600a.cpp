@@ -101,7 +101,7 @@ constexpr IdealPart ideal_part{.a1 = -5.999509388699467,
 
 constinit const Fluid r600a{
     .name = "R600a",
-    .second_name = "R-600a",
+    .second_name = "isobutane",
     .composition = "isobutane CH(CH3)3 100 %",
     .safety_class = "A3 (ASHRAE 34 / ISO 817)",
     .source = "Buecker and Wagner 2006, doi:10.1063/1.1901687",

@@ -101,7 +101,7 @@ constexpr IdealPart ideal_part{.a1 = -5.6037239390779225,
 
 constinit const Fluid r717{
     .name = "R717",
-    .second_name = "R-717",
+    .second_name = "ammonia",
     .composition = "ammonia NH3 100 %",
     .safety_class = "B2L (ASHRAE 34 / ISO 817)",
     .source = "Gao et al. 2023, doi:10.1063/5.0128269",

@@ -122,7 +122,7 @@ constexpr IdealPart ideal_part{.a1 = -6.124871062431847,
 
 constinit const Fluid r744{
     .name = "R744",
-    .second_name = "R-744",
+    .second_name = "carbon dioxide",
     .composition = "carbon dioxide CO2 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817)",
     .source = "Span and Wagner 1996, doi:10.1063/1.555991",

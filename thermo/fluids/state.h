@@ -81,8 +81,9 @@ struct Saturation {
 // By (p, s) where the saturation at that very pressure is known already: half the time.
 [[nodiscard]] Result<State> state(const Fluid& fluid, const GivenPs& given, const Saturation& at_p);
 
-// Every fluid of the program, and one by its name ("R134a", "R718" or "water"); null where there is
-// none.
+// Every fluid of the program, and one by its name or second name, however it is written ("R134a",
+// "r-134a", "R1234ze(E)", "Propane"): letters and digits count, their case does not. Null where
+// there is none.
 [[nodiscard]] std::span<const Fluid* const> fluids();
 [[nodiscard]] const Fluid* fluid_named(std::string_view name);
 

@@ -159,7 +159,17 @@ TEST(FluidNamed, KnowsWaterByBothNames) {
   EXPECT_EQ(fluid_named("water"), &r718);
 }
 
+TEST(FluidNamed, ForgivesHowANameIsWritten) {
+  EXPECT_EQ(fluid_named("r-134a"), &r134a);
+  EXPECT_EQ(fluid_named("R1234ze(E)"), &r1234ze_e);
+  EXPECT_EQ(fluid_named("R-1234ze (E)"), &r1234ze_e);
+  EXPECT_EQ(fluid_named("r1234ze"), &r1234ze_e);
+  EXPECT_EQ(fluid_named("Propane"), &r290);
+  EXPECT_EQ(fluid_named("carbon dioxide"), &r744);
+}
+
 TEST(FluidNamed, IsNullForAnUnknownName) {
+  EXPECT_EQ(fluid_named("-()"), nullptr);
   EXPECT_EQ(fluid_named("R999"), nullptr);
   EXPECT_EQ(fluid_named(""), nullptr);
 }
