@@ -32,12 +32,10 @@ Bracket bracket(const Isotherm& isotherm, Branch branch) {
     return {0.0, fluid.densest_kgm3};
   }
   if (branch == Branch::liquid) {
-    return {near_critical ? fluid.critical_rho_kgm3
-                          : 0.95 * ancillary_value(fluid.saturated_liquid_rho, T_K),
+    return {near_critical ? fluid.critical_rho_kgm3 : 0.95 * line_liquid_kgm3(fluid, T_K),
             fluid.densest_kgm3};
   }
-  return {0.0, near_critical ? fluid.critical_rho_kgm3
-                             : 1.05 * ancillary_value(fluid.saturated_vapour_rho, T_K)};
+  return {0.0, near_critical ? fluid.critical_rho_kgm3 : 1.05 * line_vapour_kgm3(fluid, T_K)};
 }
 
 }  // namespace
@@ -46,9 +44,7 @@ double guessed_rho_kgm3(const Isotherm& isotherm, Branch branch, double p_Pa) {
   const Fluid& fluid = isotherm.fluid();
   const double T_K = isotherm.temperature_K();
   if (branch == Branch::liquid) {
-    return T_K < fluid.saturated_liquid_rho.scale_T_K
-               ? ancillary_value(fluid.saturated_liquid_rho, T_K)
-               : 1.1 * fluid.critical_rho_kgm3;
+    return line_liquid_kgm3(fluid, T_K);
   }
   // p = rho R T (1 + B rho), where that has a solution; else the density at its highest pressure.
   const double ideal = p_Pa / (fluid.gas_constant_JkgK * T_K);

@@ -48,7 +48,7 @@ struct NonAnalyticTerm {
   double upper_d;
 };
 
-struct IdealPower {  // n tau^t
+struct Power {  // n x^t: x is tau in the ideal part, theta on a saturation line
   double n;
   double t;
 };
@@ -64,29 +64,16 @@ struct IdealPart {
   double a1;
   double a2;
   double a_log_tau;
-  std::span<const IdealPower> powers;
-  std::span<const PlanckEinstein> planck_einstein;
-};
-
-// A first guess on the saturation line, nothing else: every value is refined by the equation.
-struct Ancillary {
-  enum class Form : unsigned char {
-    exp_tau_sum,  // y_scale exp(T_scale / T sum)
-    exp_sum,      // y_scale exp(sum)
-    one_plus_sum  // y_scale (1 + sum)
-  };
-  Form form;
-  double y_scale_SI;                 // Pa, or kg/m3
-  double scale_T_K;                  // sum = sum of n theta^t, theta = 1 - T / scale_T_K
-  std::span<const IdealPower> rows;  // n, t
+  std::span<const Power> powers = {};
+  std::span<const PlanckEinstein> planck_einstein = {};
 };
 
 struct Fluid {
-  std::string_view name;          // "R134a"
-  std::string_view second_name;   // also accepted; empty if none
-  std::string_view composition;   // for people: the substance, or mass fractions
-  std::string_view safety_class;  // for people, with its source; never a safety setting
-  std::string_view source;        // publication of the equation
+  std::string_view name;              // "R134a"
+  std::string_view second_name = {};  // also accepted: "propane"
+  std::string_view composition;       // for people: the substance, or mass fractions
+  std::string_view safety_class;      // for people, with its source; never a safety setting
+  std::string_view source;            // publication of the equation
   std::string_view reference_state;
   double molar_mass_kgmol;
   double gas_constant_JkgK;  // as the paper's own equation uses it
@@ -101,15 +88,17 @@ struct Fluid {
   double densest_kgm3;  // above any density within the limits: only bounds the search
   IdealPart ideal;
   PowerTerms residual;
-  std::span<const GaussianTerm> gaussian;
-  std::span<const AssociatingTerm> associating;
-  std::span<const NonAnalyticTerm> non_analytic;
-  Ancillary saturation_pressure;   // good to 0.05 % everywhere below the critical point
-  Ancillary saturated_liquid_rho;  // good to 0.2 % below 0.98 of the critical temperature, else 5 %
-  Ancillary saturated_vapour_rho;  // the same
-  // Of a blend that is treated as one fluid: its dew line. Then saturation_pressure is its bubble
-  // line, and both are the published ones and not guesses.
-  const Ancillary* dew_pressure = nullptr;
+  std::span<const GaussianTerm> gaussian = {};
+  std::span<const AssociatingTerm> associating = {};
+  std::span<const NonAnalyticTerm> non_analytic = {};
+  // The saturation line, with theta = 1 - T / critical_T_K; what the sums mean stands in
+  // thermo/fluids/ancillary.h. Of a pure fluid all three are first guesses.
+  std::span<const Power> saturation_pressure;   // good to 0.05 % everywhere
+  std::span<const Power> saturated_liquid_rho;  // good to 0.2 % below 0.98 of the critical
+  std::span<const Power> saturated_vapour_rho;  // temperature, else 5 %
+  // Of a blend that is treated as one fluid. Then saturation_pressure is its bubble line, and both
+  // pressures are the published ones.
+  std::span<const Power> dew_pressure = {};
 };
 
 }  // namespace lostwork

@@ -87,7 +87,7 @@ void Isotherm::set_ideal_part() {
   ideal_ = part.a1 + part.a2 * tau_ + part.a_log_tau * log_tau_;
   ideal_t_ = part.a2 * tau_ + part.a_log_tau;
   ideal_tt_ = -part.a_log_tau;
-  for (const IdealPower& row : part.powers) {
+  for (const Power& row : part.powers) {
     const double value = row.n * power(log_tau_, row.t);
     ideal_ += value;
     ideal_t_ += row.t * value;

@@ -10,24 +10,9 @@
 namespace lostwork {
 namespace {
 
-const Ancillary& bubble(const Fluid& fluid) {
-  return fluid.saturation_pressure;
-}
-const Ancillary& dew(const Fluid& fluid) {
-  return *fluid.dew_pressure;
-}
-
 Result<State> phase_state(const Fluid& fluid, const GivenTp& at, Phase phase) {
-  const Isotherm isotherm{fluid, at.T_K};
-  const Branch branch = phase == Phase::liquid ? Branch::liquid : Branch::vapour;
-  return density_kgm3(isotherm, branch, at.p_Pa, guessed_rho_kgm3(isotherm, branch, at.p_Pa))
-      .and_then([&](double rho_kgm3) { return single_phase(isotherm, phase, at.p_Pa, rho_kgm3); });
-}
-
-// Along one of the two lines.
-double dT_dp(const Ancillary& line, double T_K) {
-  const double p_Pa = ancillary_value(line, T_K);
-  return -T_K * T_K / (p_Pa * log_ancillary(line, T_K).by_inverse_T);
+  return on_branch(Isotherm{fluid, at.T_K},
+                   phase == Phase::liquid ? Branch::liquid : Branch::vapour, phase, at.p_Pa);
 }
 
 Result<Saturation> between(const Fluid& fluid, const GivenTp& boiling, const GivenTp& condensing) {
@@ -40,8 +25,8 @@ Result<Saturation> between(const Fluid& fluid, const GivenTp& boiling, const Giv
   vapour->quality = 1.0;
   return Saturation{.liquid = *liquid,
                     .vapour = *vapour,
-                    .bubble_dT_dp = dT_dp(bubble(fluid), boiling.T_K),
-                    .dew_dT_dp = dT_dp(dew(fluid), condensing.T_K)};
+                    .bubble_dT_dp = line_dT_dp(fluid, Line::bubble, boiling.T_K),
+                    .dew_dT_dp = line_dT_dp(fluid, Line::dew, condensing.T_K)};
 }
 
 struct Temperatures {
@@ -51,12 +36,12 @@ struct Temperatures {
 // Near the critical point, where the lines are steep, Newton's method may need more steps than it
 // has: not_converged.
 Result<Temperatures> temperatures_at(const Fluid& fluid, double p_Pa) {
-  const Temperatures at{boiling_T_K(bubble(fluid), p_Pa, boiling_steps),
-                        boiling_T_K(dew(fluid), p_Pa, boiling_steps)};
-  const auto is_on = [p_Pa](const Ancillary& line, double T_K) {
-    return std::abs(ancillary_value(line, T_K) - p_Pa) <= 1e-10 * p_Pa;
+  const Temperatures at{boiling_T_K(fluid, Line::bubble, p_Pa, boiling_steps),
+                        boiling_T_K(fluid, Line::dew, p_Pa, boiling_steps)};
+  const auto is_on = [&fluid, p_Pa](Line line, double T_K) {
+    return std::abs(line_p_Pa(fluid, line, T_K) - p_Pa) <= 1e-10 * p_Pa;
   };
-  if (!is_on(bubble(fluid), at.bubble_T_K) || !is_on(dew(fluid), at.dew_T_K)) {
+  if (!is_on(Line::bubble, at.bubble_T_K) || !is_on(Line::dew, at.dew_T_K)) {
     return refusal(ReasonCode::not_converged, "pressure", p_Pa);
   }
   return at;
@@ -65,15 +50,15 @@ Result<Temperatures> temperatures_at(const Fluid& fluid, double p_Pa) {
 }  // namespace
 
 bool is_pseudo_pure(const Fluid& fluid) {
-  return fluid.dew_pressure != nullptr;
+  return !fluid.dew_pressure.empty();
 }
 
 Result<Saturation> pseudo_pure_at_T(const Fluid& fluid, double T_K) {
   if (!(T_K < fluid.critical_T_K)) {
     return refusal(ReasonCode::outside_fluid, "temperature", T_K);
   }
-  return between(fluid, {T_K, ancillary_value(bubble(fluid), T_K)},
-                 {T_K, ancillary_value(dew(fluid), T_K)});
+  return between(fluid, {T_K, line_p_Pa(fluid, Line::bubble, T_K)},
+                 {T_K, line_p_Pa(fluid, Line::dew, T_K)});
 }
 
 Result<Saturation> pseudo_pure_at_p(const Fluid& fluid, double p_Pa) {
@@ -111,10 +96,10 @@ Result<State> pseudo_pure_state(const Fluid& fluid, const GivenTx& given) {
 }
 
 Result<State> pseudo_pure_state(const Fluid& fluid, const GivenTp& given) {
-  if (given.p_Pa > ancillary_value(bubble(fluid), given.T_K)) {
+  if (given.p_Pa > line_p_Pa(fluid, Line::bubble, given.T_K)) {
     return phase_state(fluid, given, Phase::liquid);
   }
-  if (given.p_Pa < ancillary_value(dew(fluid), given.T_K)) {
+  if (given.p_Pa < line_p_Pa(fluid, Line::dew, given.T_K)) {
     return phase_state(fluid, given, Phase::vapour);
   }
   return pseudo_pure_at_p(fluid, given.p_Pa).map([&](const Saturation& at) {

@@ -26,8 +26,7 @@ double close_enough(const Fluid& fluid, double T_K) {
 
 // The densities alone are guessed: Newton's method asks for no pressure to begin with.
 TwoPhases guessed_phases(const Fluid& fluid, double T_K, double p_Pa) {
-  return {T_K, p_Pa, ancillary_value(fluid.saturated_liquid_rho, T_K),
-          ancillary_value(fluid.saturated_vapour_rho, T_K)};
+  return {T_K, p_Pa, line_liquid_kgm3(fluid, T_K), line_vapour_kgm3(fluid, T_K)};
 }
 
 // The gap between the Gibbs energies of the liquid and the vapour, J/kg: g / (R T) is alphar +
@@ -188,7 +187,7 @@ Result<TwoPhases> halved_at_p(const Fluid& fluid, double p_Pa, double guess_T_K)
 }  // namespace
 
 TwoPhases guessed_phases_at_p(const Fluid& fluid, double p_Pa) {
-  return guessed_phases(fluid, boiling_T_K(fluid.saturation_pressure, p_Pa, 2), p_Pa);
+  return guessed_phases(fluid, boiling_T_K(fluid, Line::bubble, p_Pa, 2), p_Pa);
 }
 
 double lowest_T_K(const Fluid& fluid) {
@@ -201,11 +200,8 @@ Result<TwoPhases> two_phases(const Isotherm& isotherm) {
   if (!(T_K < fluid.critical_T_K)) {
     return refusal(ReasonCode::outside_fluid, "temperature", T_K);
   }
-  if (T_K < fluid.saturation_pressure.scale_T_K) {
-    const auto found = newton(isotherm, guessed_phases(fluid, T_K, 0.0));
-    if (found) {
-      return *found;
-    }
+  if (const auto quick = newton(isotherm, guessed_phases(fluid, T_K, 0.0))) {
+    return *quick;
   }
   const auto start = bracketed(isotherm);
   if (!start) {

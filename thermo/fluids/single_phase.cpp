@@ -65,6 +65,11 @@ Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa, d
   return state;
 }
 
+Result<State> on_branch(const Isotherm& isotherm, Branch branch, Phase phase, double p_Pa) {
+  return density_kgm3(isotherm, branch, p_Pa, guessed_rho_kgm3(isotherm, branch, p_Pa))
+      .and_then([&](double rho_kgm3) { return single_phase(isotherm, phase, p_Pa, rho_kgm3); });
+}
+
 Result<Saturation> saturation_of(const Isotherm& isotherm, const TwoPhases& at) {
   Result<State> liquid = single_phase(isotherm, Phase::liquid, at.p_Pa, at.liquid_kgm3);
   Result<State> vapour = single_phase(isotherm, Phase::vapour, at.p_Pa, at.vapour_kgm3);

@@ -3,6 +3,7 @@
 // Pure. Internal to thermo/fluids.
 #pragma once
 
+#include "thermo/fluids/density.h"
 #include "thermo/fluids/helmholtz.h"
 #include "thermo/fluids/saturation.h"
 #include "thermo/fluids/state.h"
@@ -25,6 +26,9 @@ namespace lostwork {
 // Refuses: not_converged (a property is not finite).
 [[nodiscard]] Result<State> single_phase(const Isotherm& isotherm, Phase phase, double p_Pa,
                                          double rho_kgm3);
+// The state on one branch of the isotherm; refuses as density_kgm3 does, too.
+[[nodiscard]] Result<State> on_branch(const Isotherm& isotherm, Branch branch, Phase phase,
+                                      double p_Pa);
 [[nodiscard]] Result<Saturation> saturation_of(const Isotherm& isotherm, const TwoPhases& at);
 // The phases of one pressure, by mass; between the temperatures of a blend, in proportion.
 [[nodiscard]] State mixed(const Saturation& at, double quality);

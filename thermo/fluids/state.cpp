@@ -22,22 +22,15 @@ Result<Phase> side(const Isotherm& isotherm, double p_Pa) {
   if (p_Pa >= fluid.critical_p_Pa) {
     return Phase::liquid;
   }
-  if (T_K < fluid.saturation_pressure.scale_T_K) {
-    const double guess_Pa = ancillary_value(fluid.saturation_pressure, T_K);
-    if (p_Pa > (1.0 + sure_side) * guess_Pa) {
-      return Phase::liquid;
-    }
-    if (p_Pa < (1.0 - sure_side) * guess_Pa) {
-      return Phase::vapour;
-    }
+  const double guess_Pa = line_p_Pa(fluid, Line::bubble, T_K);
+  if (p_Pa > (1.0 + sure_side) * guess_Pa) {
+    return Phase::liquid;
+  }
+  if (p_Pa < (1.0 - sure_side) * guess_Pa) {
+    return Phase::vapour;
   }
   return two_phases(isotherm).map(
       [p_Pa](const TwoPhases& at) { return p_Pa > at.p_Pa ? Phase::liquid : Phase::vapour; });
-}
-
-Result<State> on_branch(const Isotherm& isotherm, Branch branch, Phase phase, double p_Pa) {
-  return density_kgm3(isotherm, branch, p_Pa, guessed_rho_kgm3(isotherm, branch, p_Pa))
-      .and_then([&](double rho_kgm3) { return single_phase(isotherm, phase, p_Pa, rho_kgm3); });
 }
 
 Result<State> mixed_state(const Result<Saturation>& at, double quality) {

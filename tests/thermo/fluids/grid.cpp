@@ -22,10 +22,14 @@ struct Region {
 
 // Not every fluid has every region: the triple point of R744 lies at 0.71 of its critical
 // temperature, R600 ends at 12 MPa. The room is for the tests' differences.
-bool is_inside(const Fluid& fluid, double of_critical_T, double of_critical_p) {
-  const double T_K = of_critical_T * fluid.critical_T_K;
+bool is_inside(const Fluid& fluid, const Region& region) {
+  const double T_K = region.of_critical_T * fluid.critical_T_K;
   return T_K > 1.03 * fluid.min_T_K && T_K < 0.97 * fluid.max_T_K &&
-         of_critical_p * fluid.critical_p_Pa < 0.97 * fluid.max_p_Pa;
+         region.of_critical_p * fluid.critical_p_Pa < 0.97 * fluid.max_p_Pa;
+}
+
+bool has_line_at(const Fluid& fluid, double of_critical_T) {
+  return !is_pseudo_pure(fluid) && of_critical_T * fluid.critical_T_K > 1.001 * fluid.min_T_K;
 }
 
 }  // namespace
@@ -46,7 +50,7 @@ std::vector<SinglePhasePlace> single_phase_grid() {
   std::vector<SinglePhasePlace> all;
   for (const Fluid* fluid : fluids()) {
     for (const Region& region : regions) {
-      if (is_inside(*fluid, region.of_critical_T, region.of_critical_p)) {
+      if (is_inside(*fluid, region)) {
         all.push_back({fluid->name, region.name, region.of_critical_T, region.of_critical_p});
       }
     }
@@ -63,7 +67,7 @@ std::vector<SaturationPlace> saturation_grid() {
   std::vector<SaturationPlace> all;
   for (const Fluid* fluid : fluids()) {
     for (const double share : {0.46, 0.5, 0.6, 0.7, 0.8, 0.9, 0.95, 0.98, 0.995, 0.9999}) {
-      if (!is_pseudo_pure(*fluid) && is_inside(*fluid, share, 0.0)) {
+      if (has_line_at(*fluid, share)) {
         all.push_back({fluid->name, share});
       }
     }

@@ -90,10 +90,12 @@ TEST_P(PseudoPure, RefusesASaturationOutsideItsLimits) {
 }
 
 TEST_P(PseudoPure, HasAnAnswerOrAReasonBesideTheCriticalPoint) {
-  for (const double share : {1e-2, 1e-3, 1e-4, 1e-6, 1e-9}) {
+  // Up to 0.997 of the critical pressure there is an answer.
+  for (const double share : {3e-2, 3e-3, 1e-3, 1e-4, 1e-6, 1e-9}) {
     const double p_Pa = fluid().critical_p_Pa * (1.0 - share);
     const Result<Saturation> found = saturation_at_p(fluid(), p_Pa);
     if (!found) {
+      EXPECT_LT(share, 3e-3);
       EXPECT_EQ(found.error().code, ReasonCode::not_converged) << share;
     } else {
       EXPECT_NEAR(saturation_at_T(fluid(), found->liquid.T_K).value().liquid.p_Pa, p_Pa,

@@ -43,7 +43,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.4775944, 1.0},
     { 1.5418792, 1.5},
     {-2.0448525, 2.5},
@@ -51,7 +51,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 2.9091433, 7.5},
     {-2.1144857, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.58290872,      0.25},
     {  4.7240402, 1.0 / 3.0},
     { -9.9127465,       0.5},
@@ -59,7 +59,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -9.4093107, 5.0 / 6.0},
     {  1.3025766,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-2.6036234, 1.0 / 3.0},
     { 4.2058727,       0.5},
     {-8.4299536, 2.0 / 3.0},
@@ -68,24 +68,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-5.4586431,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 438.86 K, 3582.8 kPa and 483.3579 kg/m3.
-constexpr double critical_T_K = 438.860000000042;
-constexpr double critical_p_Pa = 3582752.889649132;
-constexpr double critical_rho_kgm3 = 483.3579248031686;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-17.29122993, 10.40494745), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = -17.291229931887596,
                                .a2 = 10.404947446884158,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -94,16 +80,18 @@ constinit const Fluid r1233zd_e{
     .name = "R1233zd(E)",
     .second_name = "R1233zd",
     .composition = "trans-1-chloro-3,3,3-trifluoroprop-1-ene CF3CH=CHCl (E) 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Akasaka and Lemmon 2022, doi:10.1063/5.0083026",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.1304962,
     .gas_constant_JkgK = 8.314462618 / 0.1304962,
     .reducing_T_K = 438.86,
     .reducing_rho_kgm3 = 3704.0 * 0.1304962,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 438.86 K, 3582.8 kPa and 483.3579 kg/m3.
+    .critical_T_K = 438.860000000042,
+    .critical_p_Pa = 3582752.889649132,
+    .critical_rho_kgm3 = 483.3579248031686,
     .min_T_K = 165.75,
     .max_T_K = 450.0,
     .max_p_Pa = 100e6,
@@ -111,11 +99,9 @@ constinit const Fluid r1233zd_e{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

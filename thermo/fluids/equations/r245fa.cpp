@@ -42,7 +42,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.8106844, 1.0},
     { 1.7861854, 1.5},
     { -0.772562, 2.0},
@@ -50,7 +50,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 12.420686, 3.5},
     {-10.255614, 4.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {   1.2359729,      0.25},
     {-0.098307676, 1.0 / 3.0},
     {   11.816092,       1.0},
@@ -58,7 +58,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {   32.857709,       1.5},
     {  -3.6643794,       2.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-4.7077565, 1.0 / 3.0},
     { 14.504183,       0.5},
     {-23.682433, 2.0 / 3.0},
@@ -67,42 +67,29 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-5.3827344,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 427.01 K, 3651 kPa and 519.4358 kg/m3.
-constexpr double critical_T_K = 427.00998969559254;
-constexpr double critical_p_Pa = 3650995.024128117;
-constexpr double critical_rho_kgm3 = 519.2846757691916;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-13.42836385, 9.87236538), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -13.382410670873416,
                                .a2 = 9.844362621509456,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
 
 constinit const Fluid r245fa{
     .name = "R245fa",
-    .second_name = "",
     .composition = "1,1,1,3,3-pentafluoropropane CF3CH2CHF2 100 %",
-    .safety_class = "B1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "B1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Akasaka et al. 2015, doi:10.1063/1.4913493",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.13404794,
     .gas_constant_JkgK = 8.3144621 / 0.13404794,
     .reducing_T_K = 427.01,
     .reducing_rho_kgm3 = 3875.0 * 0.13404794,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 427.01 K, 3651 kPa and 519.4358 kg/m3.
+    .critical_T_K = 427.00998969559254,
+    .critical_p_Pa = 3650995.024128117,
+    .critical_rho_kgm3 = 519.2846757691916,
     .min_T_K = 171.05,
     .max_T_K = 440.0,
     .max_p_Pa = 200e6,
@@ -110,11 +97,9 @@ constinit const Fluid r245fa{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

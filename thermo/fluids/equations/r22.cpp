@@ -49,7 +49,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     { -0.00178930036389, 13.0, 8, 4},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-0.0222800387550675, -1.0},
 });
@@ -68,7 +68,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     { -7.066232,  1.0},
     { 1.5561095,  1.5},
     {-2.0266148,  2.5},
@@ -76,7 +76,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 7.0664861,  9.0},
     {-5.9727949, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.79859797,      0.25},
     {  3.7859094, 1.0 / 3.0},
     { -2.8762775,       0.5},
@@ -84,7 +84,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-0.60273768, 5.0 / 6.0},
     { 0.29722611,       3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.1841253, 1.0 / 3.0},
     {-3.3716138,       0.5},
     { 3.2729807, 2.0 / 3.0},
@@ -92,19 +92,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { 1.9780794, 4.0 / 3.0},
     { -4.679792,       4.0},
 });
-
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 369.295 K, 4990 kPa and 523.8422 kg/m3.
-constexpr double critical_T_K = 369.2950000080274;
-constexpr double critical_p_Pa = 4990000.000456495;
-constexpr double critical_rho_kgm3 = 523.842167023752;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
 
 // a1 and a2 follow from the IIR state alone.
 constexpr IdealPart ideal_part{.a1 = -11.853420922629606,
@@ -117,30 +104,28 @@ constexpr IdealPart ideal_part{.a1 = -11.853420922629606,
 
 constinit const Fluid r22{
     .name = "R22",
-    .second_name = "",
     .composition = "chlorodifluoromethane CHClF2 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Kamei et al. 1995, doi:10.1007/BF02081283",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.086468,
     .gas_constant_JkgK = 8.31451 / 0.086468,
     .reducing_T_K = 369.295,
     .reducing_rho_kgm3 = 6058.22 * 0.086468,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 369.295 K, 4990 kPa and 523.8422 kg/m3.
+    .critical_T_K = 369.2950000080274,
+    .critical_p_Pa = 4990000.000456495,
+    .critical_rho_kgm3 = 523.842167023752,
     .min_T_K = 115.73,
     .max_T_K = 550.0,
     .max_p_Pa = 60e6,
     .densest_kgm3 = 1950.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -56,7 +56,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     { 0.0012407880794343697, 5.0, 10, 2},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     { -2.122650499999833, -1.0},
     {-0.6225413333328242, -2.0},
@@ -64,7 +64,7 @@ constexpr auto ideal = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     { -7.5871363,  1.0},
     {  3.0436619,  1.5},
     { -3.3947387,  2.0},
@@ -72,7 +72,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { -4.8444711,  4.0},
     {0.086118006, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.2942396, 1.0 / 3.0},
     { 20.749368,       0.5},
     {-47.770512, 2.0 / 3.0},
@@ -80,7 +80,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-28.328015, 4.0 / 3.0},
     { 18.102326,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {0.021658241, 1.0 / 3.0},
     { -9.7458123,       0.5},
     {  11.983047, 2.0 / 3.0},
@@ -89,54 +89,36 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { -5.0161517,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 386.411 K, 4520 kPa and 368 kg/m3.
-constexpr double critical_T_K = 386.4109977772107;
-constexpr double critical_p_Pa = 4516749.941044934;
-constexpr double critical_rho_kgm3 = 367.999843595564;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 follow from the IIR state alone.
-constexpr IdealPart ideal_part{.a1 = -7.950506771630748,
-                               .a2 = 6.8700786565429555,
-                               .a_log_tau = 2.354951,
-                               .powers = ideal,
-                               .planck_einstein = {}};
+constexpr IdealPart ideal_part{
+    .a1 = -7.950506771630748, .a2 = 6.8700786565429555, .a_log_tau = 2.354951, .powers = ideal};
 
 }  // namespace
 
 constinit const Fluid r152a{
     .name = "R152a",
-    .second_name = "",
     .composition = "1,1-difluoroethane CH3CHF2 100 %",
-    .safety_class = "A2 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A2 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Outcalt and McLinden 1996, doi:10.1063/1.555979",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.066051,
     .gas_constant_JkgK = 8.314471 / 0.066051,
     .reducing_T_K = 386.411,
     .reducing_rho_kgm3 = 5571.45 * 0.066051,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 386.411 K, 4520 kPa and 368 kg/m3.
+    .critical_T_K = 386.4109977772107,
+    .critical_p_Pa = 4516749.941044934,
+    .critical_rho_kgm3 = 367.999843595564,
     .min_T_K = 154.56,
     .max_T_K = 500.0,
     .max_p_Pa = 58e6,
     .densest_kgm3 = 1400.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -48,7 +48,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-6.7055022,  1.0},
     { 1.4570176,  1.5},
     {-1.3894234,  2.5},
@@ -56,7 +56,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 1.4363198,  9.0},
     {-1.7781529, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.42302908,      0.25},
     {  3.4590567, 1.0 / 3.0},
     { -4.6261242,       0.5},
@@ -64,7 +64,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -2.5111954, 5.0 / 6.0},
     { 0.38142904,       3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {  -2.112323, 1.0 / 3.0},
     {  1.8696924,       0.5},
     { -4.3857621, 2.0 / 3.0},
@@ -73,24 +73,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-0.42450297,      10.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 364.211 K, 4555 kPa and 229.6291 kg/m3.
-constexpr double critical_T_K = 364.2110025913478;
-constexpr double critical_p_Pa = 4554993.018414992;
-constexpr double critical_rho_kgm3 = 229.62840107079316;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (4.9916462, -0.1709449), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -5.182327965145156,
                                .a2 = 4.363990276542784,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -99,16 +85,18 @@ constinit const Fluid r1270{
     .name = "R1270",
     .second_name = "propylene",
     .composition = "propylene C3H6 100 %",
-    .safety_class = "A3 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A3 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon et al. 2010, personal communication",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.04207974,
     .gas_constant_JkgK = 8.314472 / 0.04207974,
     .reducing_T_K = 364.211,
     .reducing_rho_kgm3 = 5457.0 * 0.04207974,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 364.211 K, 4555 kPa and 229.6291 kg/m3.
+    .critical_T_K = 364.2110025913478,
+    .critical_p_Pa = 4554993.018414992,
+    .critical_rho_kgm3 = 229.62840107079316,
     .min_T_K = 87.953,
     .max_T_K = 575.0,
     .max_p_Pa = 1000e6,
@@ -116,11 +104,9 @@ constinit const Fluid r1270{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -34,7 +34,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     {   -0.003615,   8.7, 6, 3},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-14.3914, -0.4},
 });
@@ -47,14 +47,14 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // Bubble and dew line as printed.
-constexpr auto bubble = std::to_array<IdealPower>({
+constexpr auto bubble = std::to_array<Power>({
   // n, t
     {0.48722,  0.54},
     {-6.6959, 0.925},
     {-1.4165,   2.7},
     {-2.5109,   4.7},
 });
-constexpr auto dew = std::to_array<IdealPower>({
+constexpr auto dew = std::to_array<Power>({
   // n, t
     {-0.086077,   0.4},
     {  -6.6364, 0.965},
@@ -63,7 +63,7 @@ constexpr auto dew = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.59948797, 1.0 / 3.0},
     {  9.6183619,       0.5},
     { -56.131435,       1.0},
@@ -71,7 +71,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -190.30906,       1.5},
     {  30.696403,       2.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.3911656, 1.0 / 3.0},
     {-3.5761578,       0.5},
     {-2.9459347, 4.0 / 3.0},
@@ -79,18 +79,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-7.6999263,       4.0},
     { 1.5079263,       5.0},
 });
-
-// As printed.
-constexpr double critical_T_K = 359.345;
-constexpr double critical_p_Pa = 4631700.0;
-constexpr double critical_rho_kgm3 = 453.43093600000003;
-
-constexpr Ancillary bubble_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, bubble};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-constexpr Ancillary dew_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, dew};
 
 // a1 and a2 as printed (2.13194, 8.05008), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = 2.1319157017113177,
@@ -103,31 +91,28 @@ constexpr IdealPart ideal_part{.a1 = 2.1319157017113177,
 
 constinit const Fluid r407c{
     .name = "R407C",
-    .second_name = "",
     .composition = "R32/R125/R134a 23/25/52 % by mass",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0862036,
     .gas_constant_JkgK = 8.314472 / 0.0862036,
     .reducing_T_K = 359.345,
     .reducing_rho_kgm3 = 5260.0 * 0.0862036,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // As printed.
+    .critical_T_K = 359.345,
+    .critical_p_Pa = 4631700.0,
+    .critical_rho_kgm3 = 453.43093600000003,
     .min_T_K = 200.0,
     .max_T_K = 500.0,
     .max_p_Pa = 50e6,
     .densest_kgm3 = 1750.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = bubble_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
-    .dew_pressure = &dew_p,
+    .saturation_pressure = bubble,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
+    .dew_pressure = dew,
 };
 
 }  // namespace lostwork

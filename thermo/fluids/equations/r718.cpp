@@ -87,7 +87,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.8635200, 1.0},
     { 1.8686386, 1.5},
     {-13.154070, 3.0},
@@ -95,7 +95,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-20.180865, 4.0},
     { 2.5321606, 6.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     { 2.5253104, 1.0 / 3.0},
     {-2.9677994,       0.5},
     { 6.6346557, 2.0 / 3.0},
@@ -103,7 +103,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-1.4553069,       5.0},
     {-1.8482503,       7.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-14.919979,       0.5},
     { 36.140978, 2.0 / 3.0},
     {-37.190346, 5.0 / 6.0},
@@ -112,9 +112,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-3.5393984,       4.0},
 });
 
-constexpr double critical_T_K = 647.096;
-constexpr double critical_p_Pa = 22064000.0;
-constexpr double critical_rho_kgm3 = 322.0;
+constexpr IdealPart ideal_part{.a1 = -8.3204464837497,
+                               .a2 = 6.6832105275932,
+                               .a_log_tau = 3.00632,
+                               .planck_einstein = planck_einstein};
 
 }  // namespace
 
@@ -122,35 +123,27 @@ constinit const Fluid r718{
     .name = "R718",
     .second_name = "water",
     .composition = "water H2O 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, from memory)",
     .source = "IAPWS-95: Wagner and Pruss 2002, doi:10.1063/1.1461829",
     .reference_state = "IAPWS-95: u = s = 0, saturated liquid at the triple point",
     .molar_mass_kgmol = 0.018015268,
     .gas_constant_JkgK = 461.51805,
     .reducing_T_K = 647.096,
     .reducing_rho_kgm3 = 322.0,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    .critical_T_K = 647.096,
+    .critical_p_Pa = 22064000.0,
+    .critical_rho_kgm3 = 322.0,
     .min_T_K = 273.16,
     .max_T_K = 1273.0,
     .max_p_Pa = 1000e6,
     .densest_kgm3 = 1500.0,
-    .ideal = {       .a1 = -8.3204464837497,
-              .a2 = 6.6832105275932,
-              .a_log_tau = 3.00632,
-              .powers = {},
-              .planck_einstein = planck_einstein},
-    .residual = PowerTerms{                     residual },
- .gaussian = gaussian,
- .associating = {                     },
+    .ideal = ideal_part,
+    .residual = PowerTerms{residual},
+    .gaussian = gaussian,
     .non_analytic = non_analytic,
-    .saturation_pressure = { Ancillary::Form::exp_tau_sum,       critical_p_Pa, critical_T_K,
-              saturation_pressure                     },
-    .saturated_liquid_rho = {Ancillary::Form::one_plus_sum,   critical_rho_kgm3, critical_T_K,
-              liquid_rho                     },
-    .saturated_vapour_rho = { Ancillary::Form::exp_tau_sum,   critical_rho_kgm3, critical_T_K,
-              vapour_rho                     },
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

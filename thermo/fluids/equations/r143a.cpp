@@ -31,7 +31,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     {0.0049080492,  19.0, 5, 3},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-16.591049152078973, -0.33},
 });
@@ -43,7 +43,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     { -7.4581533, 1.0},
     {  2.5724709, 1.5},
     {  -2.469197, 2.0},
@@ -51,7 +51,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {   -4.17396, 4.0},
     {0.075356065, 7.5},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.3823748, 1.0 / 3.0},
     { 26.441838,       0.5},
     {-82.214817, 2.0 / 3.0},
@@ -59,7 +59,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -72.62826,       1.0},
     { 12.111529, 4.0 / 3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.57832076, 1.0 / 3.0},
     { -6.2408346,       0.5},
     {  6.7291931, 2.0 / 3.0},
@@ -67,19 +67,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {  2.8233108, 4.0 / 3.0},
     { -4.9797611,       4.0},
 });
-
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 345.857 K, 3761 kPa and 431.0001 kg/m3.
-constexpr double critical_T_K = 345.85700086786187;
-constexpr double critical_p_Pa = 3761818.271394984;
-constexpr double critical_rho_kgm3 = 431.00042649640847;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
 
 // a1 and a2 follow from the IIR state alone.
 constexpr IdealPart ideal_part{.a1 = 5.903048119431655,
@@ -92,30 +79,28 @@ constexpr IdealPart ideal_part{.a1 = 5.903048119431655,
 
 constinit const Fluid r143a{
     .name = "R143a",
-    .second_name = "",
     .composition = "1,1,1-trifluoroethane CF3CH3 100 %",
-    .safety_class = "A2L (ASHRAE 34 / ISO 817)",
+    .safety_class = "A2L (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon and Jacobsen 2000, doi:10.1063/1.1318909",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.084041,
     .gas_constant_JkgK = 8.314472 / 0.084041,
     .reducing_T_K = 345.857,
     .reducing_rho_kgm3 = 5128.45 * 0.084041,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 345.857 K, 3761 kPa and 431.0001 kg/m3.
+    .critical_T_K = 345.85700086786187,
+    .critical_p_Pa = 3761818.271394984,
+    .critical_rho_kgm3 = 431.00042649640847,
     .min_T_K = 161.34,
     .max_T_K = 650.0,
     .max_p_Pa = 150e6,
     .densest_kgm3 = 1650.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

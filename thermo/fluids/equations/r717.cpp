@@ -52,7 +52,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.2589696, 1.0},
     { 1.4830578, 1.5},
     {-9.8073731, 3.0},
@@ -60,7 +60,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-15.337637, 4.0},
     { 2.8232577, 7.5},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     { 1.0561488,      0.25},
     {-1.9181296, 1.0 / 3.0},
     {  7.673598,       0.5},
@@ -68,7 +68,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {  3.566068, 5.0 / 6.0},
     {0.14769728,       5.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.6467798, 1.0 / 3.0},
     {0.29204768,       0.5},
     {-3.7306289, 2.0 / 3.0},
@@ -77,24 +77,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-3.9803597,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 405.56 K, 11363.39116 kPa and 233.25 kg/m3.
-constexpr double critical_T_K = 405.55999997326353;
-constexpr double critical_p_Pa = 11363395.008781692;
-constexpr double critical_rho_kgm3 = 233.24999599843926;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-6.594060939, 5.60101152), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -5.6037239390779225,
                                .a2 = 4.865272476565865,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -103,16 +89,18 @@ constinit const Fluid r717{
     .name = "R717",
     .second_name = "ammonia",
     .composition = "ammonia NH3 100 %",
-    .safety_class = "B2L (ASHRAE 34 / ISO 817)",
+    .safety_class = "B2L (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Gao et al. 2023, doi:10.1063/5.0128269",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.01703052,
     .gas_constant_JkgK = 8.314462618 / 0.01703052,
     .reducing_T_K = 405.56,
     .reducing_rho_kgm3 = 13696.0 * 0.01703052,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 405.56 K, 11363.39116 kPa and 233.25 kg/m3.
+    .critical_T_K = 405.55999997326353,
+    .critical_p_Pa = 11363395.008781692,
+    .critical_rho_kgm3 = 233.24999599843926,
     .min_T_K = 195.495,
     .max_T_K = 725.0,
     .max_p_Pa = 1000e6,
@@ -121,10 +109,9 @@ constinit const Fluid r717{
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
     .associating = associating,
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -35,7 +35,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     {  0.0170451,  16.2, 5, 3},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-21.6054, -0.25},
 });
@@ -48,14 +48,14 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // Bubble and dew line as printed.
-constexpr auto bubble = std::to_array<IdealPower>({
+constexpr auto bubble = std::to_array<Power>({
   // n, t
     {-7.4853, 1.0},
     { 2.0115, 1.5},
     {-2.0141, 2.2},
     {-3.7763, 4.6},
 });
-constexpr auto dew = std::to_array<IdealPower>({
+constexpr auto dew = std::to_array<Power>({
   // n, t
     {-7.5459, 1.0},
     {  2.338, 1.5},
@@ -64,7 +64,7 @@ constexpr auto dew = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-44.252141,      0.25},
     { 145.64646, 1.0 / 3.0},
     {-328.39793,       0.5},
@@ -72,7 +72,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-386.46368, 5.0 / 6.0},
     { 121.21488,       1.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     { 1.9864182, 1.0 / 3.0},
     {-19.963662,       0.5},
     { 28.760215, 2.0 / 3.0},
@@ -80,18 +80,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {  16.07998, 4.0 / 3.0},
     {-6.6964816,       3.0},
 });
-
-// As printed.
-constexpr double critical_T_K = 343.765;
-constexpr double critical_p_Pa = 3704900.0;
-constexpr double critical_rho_kgm3 = 490.7370688;
-
-constexpr Ancillary bubble_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, bubble};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-constexpr Ancillary dew_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, dew};
 
 // a1 and a2 as printed (9.93541, 7.9985), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = 9.935454173781414,
@@ -104,31 +92,28 @@ constexpr IdealPart ideal_part{.a1 = 9.935454173781414,
 
 constinit const Fluid r507a{
     .name = "R507A",
-    .second_name = "",
     .composition = "R125/R143a 50/50 % by mass",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0988592,
     .gas_constant_JkgK = 8.314472 / 0.0988592,
     .reducing_T_K = 343.765,
     .reducing_rho_kgm3 = 4964.0 * 0.0988592,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // As printed.
+    .critical_T_K = 343.765,
+    .critical_p_Pa = 3704900.0,
+    .critical_rho_kgm3 = 490.7370688,
     .min_T_K = 200.0,
     .max_T_K = 500.0,
     .max_p_Pa = 50e6,
     .densest_kgm3 = 1750.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = bubble_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
-    .dew_pressure = &dew_p,
+    .saturation_pressure = bubble,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
+    .dew_pressure = dew,
 };
 
 }  // namespace lostwork

@@ -73,7 +73,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.0444282, 1.0},
     { 1.6642935, 1.5},
     {-4.2648915, 2.5},
@@ -81,7 +81,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-5.1215901, 4.0},
     {-5.9600642, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {   0.6717994,      0.25},
     {-0.067278779, 1.0 / 3.0},
     {   2.1502844,       0.5},
@@ -89,7 +89,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {   2.8353364, 4.0 / 3.0},
     {  -1.5109479,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.8047479, 1.0 / 3.0},
     {0.63751659,       0.5},
     {-3.2868956, 2.0 / 3.0},
@@ -98,24 +98,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-5.1743775,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 304.1282 K, 7377.3 kPa and 467.6 kg/m3.
-constexpr double critical_T_K = 304.1282000029807;
-constexpr double critical_p_Pa = 7377298.373446729;
-constexpr double critical_rho_kgm3 = 467.59996991047996;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (8.37304456, -3.70454304), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -6.124871062431847,
                                .a2 = 5.1155963180145205,
                                .a_log_tau = 2.5,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -124,16 +110,18 @@ constinit const Fluid r744{
     .name = "R744",
     .second_name = "carbon dioxide",
     .composition = "carbon dioxide CO2 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Span and Wagner 1996, doi:10.1063/1.555991",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0440098,
     .gas_constant_JkgK = 8.31451 / 0.0440098,
     .reducing_T_K = 304.1282,
     .reducing_rho_kgm3 = 10624.9063 * 0.0440098,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 304.1282 K, 7377.3 kPa and 467.6 kg/m3.
+    .critical_T_K = 304.1282000029807,
+    .critical_p_Pa = 7377298.373446729,
+    .critical_rho_kgm3 = 467.59996991047996,
     .min_T_K = 216.592,
     .max_T_K = 2000.0,
     .max_p_Pa = 800e6,
@@ -141,11 +129,10 @@ constinit const Fluid r744{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
     .non_analytic = non_analytic,
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -52,7 +52,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.0920675,  1.0},
     { 1.8307057,  1.5},
     {-2.1425567,  2.5},
@@ -60,7 +60,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 5.7149491,  9.0},
     {-5.0111947, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.58145877, 1.0 / 3.0},
     {  13.260511,       0.5},
     { -25.181075, 2.0 / 3.0},
@@ -68,7 +68,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {  -4.528686,       1.5},
     {  2.1620478,       2.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.59331577, 1.0 / 3.0},
     { -4.7104529,       0.5},
     {  3.6137699, 2.0 / 3.0},
@@ -77,24 +77,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {  -4.189618,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 425.125 K, 3796 kPa and 228 kg/m3.
-constexpr double critical_T_K = 425.125000000008;
-constexpr double critical_p_Pa = 3796000.017417927;
-constexpr double critical_rho_kgm3 = 228.00000000003809;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (12.54882924, -5.46976878), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -5.424959593897867,
                                .a2 = 4.919495128324196,
                                .a_log_tau = 3.24680487,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -103,16 +89,18 @@ constinit const Fluid r600{
     .name = "R600",
     .second_name = "butane",
     .composition = "n-butane C4H10 100 %",
-    .safety_class = "A3 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A3 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Buecker and Wagner 2006, doi:10.1063/1.1901687",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0581222,
     .gas_constant_JkgK = 8.314472 / 0.0581222,
     .reducing_T_K = 425.125,
     .reducing_rho_kgm3 = 3922.76961299 * 0.0581222,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 425.125 K, 3796 kPa and 228 kg/m3.
+    .critical_T_K = 425.125000000008,
+    .critical_p_Pa = 3796000.017417927,
+    .critical_rho_kgm3 = 228.00000000003809,
     .min_T_K = 134.895,
     .max_T_K = 575.0,
     .max_p_Pa = 12e6,
@@ -120,11 +108,9 @@ constinit const Fluid r600{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -45,7 +45,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-6.7619806,  1.0},
     { 1.5526974,  1.5},
     {-1.6247205,  2.5},
@@ -53,7 +53,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 5.0264987,  7.5},
     {-2.0415597, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.3501232,      0.25},
     { 5.3788573, 1.0 / 3.0},
     {-5.8400503,       0.5},
@@ -61,7 +61,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-1.9222599, 5.0 / 6.0},
     {0.27898367,       3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.3192922, 1.0 / 3.0},
     {-1.5581045,       0.5},
     {-2.6053974,       1.0},
@@ -70,24 +70,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-1.5368168,       5.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 369.89 K, 4251.2 kPa and 220.4781 kg/m3.
-constexpr double critical_T_K = 369.8900089509634;
-constexpr double critical_p_Pa = 4251165.328013044;
-constexpr double critical_rho_kgm3 = 220.47812749206838;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-4.970583, 4.29352), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = -4.97058316343512,
                                .a2 = 4.293520087439923,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -96,16 +82,18 @@ constinit const Fluid r290{
     .name = "R290",
     .second_name = "propane",
     .composition = "propane C3H8 100 %",
-    .safety_class = "A3 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A3 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon et al. 2009, doi:10.1021/je900217v",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.04409562,
     .gas_constant_JkgK = 8.314472 / 0.04409562,
     .reducing_T_K = 369.89,
     .reducing_rho_kgm3 = 5000.0 * 0.04409562,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 369.89 K, 4251.2 kPa and 220.4781 kg/m3.
+    .critical_T_K = 369.8900089509634,
+    .critical_p_Pa = 4251165.328013044,
+    .critical_rho_kgm3 = 220.47812749206838,
     .min_T_K = 85.525,
     .max_T_K = 650.0,
     .max_p_Pa = 1000e6,
@@ -113,11 +101,9 @@ constinit const Fluid r290{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

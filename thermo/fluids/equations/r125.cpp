@@ -32,7 +32,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     { 0.02296658,  24.0, 5, 3, 6.0},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-49.8651, -0.1},
 });
@@ -45,7 +45,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.6530641, 1.0},
     { 3.2733183, 1.5},
     {-5.6262854, 2.0},
@@ -53,7 +53,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-5.6013974, 3.5},
     {-1.4726966, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.9166422,      0.25},
     { 6.4810259, 1.0 / 3.0},
     {-24.243862, 2.0 / 3.0},
@@ -61,7 +61,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-31.369164,       1.0},
     { 4.2818837,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.56284236, 1.0 / 3.0},
     { -7.0032604,       0.5},
     {  8.4950889, 2.0 / 3.0},
@@ -69,19 +69,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {  5.8479164,       2.0},
     { -8.4517721,       3.0},
 });
-
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 339.173 K, 3617.7 kPa and 573.5823 kg/m3.
-constexpr double critical_T_K = 339.1772824561048;
-constexpr double critical_p_Pa = 3618276.0556197246;
-constexpr double critical_rho_kgm3 = 573.3948598942909;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
 
 // a1 and a2 as printed (37.2674, 8.88404), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = 37.267451692030704,
@@ -94,30 +81,28 @@ constexpr IdealPart ideal_part{.a1 = 37.267451692030704,
 
 constinit const Fluid r125{
     .name = "R125",
-    .second_name = "",
     .composition = "pentafluoroethane CHF2CF3 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon and Jacobsen 2005, doi:10.1063/1.1797813",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.1200214,
     .gas_constant_JkgK = 8.314472 / 0.1200214,
     .reducing_T_K = 339.173,
     .reducing_rho_kgm3 = 4779.0 * 0.1200214,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 339.173 K, 3617.7 kPa and 573.5823 kg/m3.
+    .critical_T_K = 339.1772824561048,
+    .critical_p_Pa = 3618276.0556197246,
+    .critical_rho_kgm3 = 573.3948598942909,
     .min_T_K = 172.52,
     .max_T_K = 500.0,
     .max_p_Pa = 60e6,
     .densest_kgm3 = 2000.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

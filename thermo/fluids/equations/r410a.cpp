@@ -34,7 +34,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     { -0.00482049,  7.4, 6, 3},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-46.87575, -0.1},
 });
@@ -47,14 +47,14 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // Bubble and dew line as printed.
-constexpr auto bubble = std::to_array<IdealPower>({
+constexpr auto bubble = std::to_array<Power>({
   // n, t
     {-7.2818, 1.0},
     { 2.5093, 1.8},
     {-3.2695, 2.4},
     {-2.8022, 4.9},
 });
-constexpr auto dew = std::to_array<IdealPower>({
+constexpr auto dew = std::to_array<Power>({
   // n, t
     {-7.4411, 1.0},
     { 1.9883, 1.6},
@@ -63,7 +63,7 @@ constexpr auto dew = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.8355475, 1.0 / 3.0},
     { 116.33868, 2.0 / 3.0},
     {-379.86755, 5.0 / 6.0},
@@ -71,7 +71,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-287.42213, 4.0 / 3.0},
     { 140.39058,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     { 1.8597116, 1.0 / 3.0},
     {-15.709811,       0.5},
     { 19.527264, 2.0 / 3.0},
@@ -79,18 +79,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { 10.205779, 4.0 / 3.0},
     {-5.3332358,       3.0},
 });
-
-// As printed.
-constexpr double critical_T_K = 344.494;
-constexpr double critical_p_Pa = 4901200.0;
-constexpr double critical_rho_kgm3 = 459.0300696;
-
-constexpr Ancillary bubble_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, bubble};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-constexpr Ancillary dew_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, dew};
 
 // a1 and a2 as printed (36.8871, 7.15807), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = 36.88706245454444,
@@ -103,31 +91,28 @@ constexpr IdealPart ideal_part{.a1 = 36.88706245454444,
 
 constinit const Fluid r410a{
     .name = "R410A",
-    .second_name = "",
     .composition = "R32/R125 50/50 % by mass",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0725854,
     .gas_constant_JkgK = 8.314472 / 0.0725854,
     .reducing_T_K = 344.494,
     .reducing_rho_kgm3 = 6324.0 * 0.0725854,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // As printed.
+    .critical_T_K = 344.494,
+    .critical_p_Pa = 4901200.0,
+    .critical_rho_kgm3 = 459.0300696,
     .min_T_K = 200.0,
     .max_T_K = 500.0,
     .max_p_Pa = 50e6,
     .densest_kgm3 = 1750.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = bubble_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
-    .dew_pressure = &dew_p,
+    .saturation_pressure = bubble,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
+    .dew_pressure = dew,
 };
 
 }  // namespace lostwork

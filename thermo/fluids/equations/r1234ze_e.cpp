@@ -42,7 +42,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     { -7.5897769, 1.0},
     {  1.9190802, 1.5},
     { -5.2690227, 2.5},
@@ -50,7 +50,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { -6.2803457, 4.0},
     {-0.87605352, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     { 3.6630485, 1.0 / 3.0},
     {-10.218331,       0.5},
     { 20.168722, 2.0 / 3.0},
@@ -58,7 +58,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { 2.2656628, 4.0 / 3.0},
     {0.29930333,       5.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-3.7213102, 1.0 / 3.0},
     { 7.7802208,       0.5},
     {-10.894762, 2.0 / 3.0},
@@ -67,24 +67,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-5.1744238,       5.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 382.513 K, 3634.870333 kPa and 489.2384 kg/m3.
-constexpr double critical_T_K = 382.51300260465183;
-constexpr double critical_p_Pa = 3634866.1930400208;
-constexpr double critical_rho_kgm3 = 489.2107573195901;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 follow from the IIR state alone.
 constexpr IdealPart ideal_part{.a1 = -12.558346671052897,
                                .a2 = 8.791229309650994,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -93,16 +79,18 @@ constinit const Fluid r1234ze_e{
     .name = "R1234ze(E)",
     .second_name = "R1234ze",
     .composition = "trans-1,3,3,3-tetrafluoroprop-1-ene CF3CH=CHF (E) 100 %",
-    .safety_class = "A2L (ASHRAE 34 / ISO 817)",
+    .safety_class = "A2L (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Thol and Lemmon 2016, doi:10.1007/s10765-016-2040-6",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.1140415928,
     .gas_constant_JkgK = 8.3144621 / 0.1140415928,
     .reducing_T_K = 382.513,
     .reducing_rho_kgm3 = 4290.0 * 0.1140415928,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 382.513 K, 3634.870333 kPa and 489.2384 kg/m3.
+    .critical_T_K = 382.51300260465183,
+    .critical_p_Pa = 3634866.1930400208,
+    .critical_rho_kgm3 = 489.2107573195901,
     .min_T_K = 168.62,
     .max_T_K = 420.0,
     .max_p_Pa = 15e6,
@@ -110,11 +98,9 @@ constinit const Fluid r1234ze_e{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -35,7 +35,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     {  0.0161382, 16.0, 5, 3},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-18.8664, -0.3},
 });
@@ -48,14 +48,14 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // Bubble and dew line as printed.
-constexpr auto bubble = std::to_array<IdealPower>({
+constexpr auto bubble = std::to_array<Power>({
   // n, t
     {0.061067,  0.54},
     { -6.5646, 0.965},
     { -3.6162,   3.7},
     { -3.9771,   9.0},
 });
-constexpr auto dew = std::to_array<IdealPower>({
+constexpr auto dew = std::to_array<Power>({
   // n, t
     {-0.00026863,   0.1},
     {    -6.5757, 0.972},
@@ -64,7 +64,7 @@ constexpr auto dew = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {0.47919571, 1.0 / 3.0},
     { 46.781614, 2.0 / 3.0},
     {-163.66604, 5.0 / 6.0},
@@ -72,7 +72,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-154.43281, 4.0 / 3.0},
     { 80.553083,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {0.86756923, 1.0 / 3.0},
     {-12.779746,       0.5},
     {  15.42432, 2.0 / 3.0},
@@ -80,18 +80,6 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { 8.0919169,       2.0},
     { -10.18038,       3.0},
 });
-
-// As printed.
-constexpr double critical_T_K = 345.27;
-constexpr double critical_p_Pa = 3734800.0;
-constexpr double critical_rho_kgm3 = 482.162772;
-
-constexpr Ancillary bubble_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, bubble};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-constexpr Ancillary dew_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K, dew};
 
 // a1 and a2 as printed (7.00407, 7.98695), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = 7.004082520045578,
@@ -104,31 +92,28 @@ constexpr IdealPart ideal_part{.a1 = 7.004082520045578,
 
 constinit const Fluid r404a{
     .name = "R404A",
-    .second_name = "",
     .composition = "R125/R143a/R134a 44/52/4 % by mass",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon 2003, doi:10.1023/A:1025048800563",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0976038,
     .gas_constant_JkgK = 8.314472 / 0.0976038,
     .reducing_T_K = 345.27,
     .reducing_rho_kgm3 = 4940.0 * 0.0976038,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // As printed.
+    .critical_T_K = 345.27,
+    .critical_p_Pa = 3734800.0,
+    .critical_rho_kgm3 = 482.162772,
     .min_T_K = 200.0,
     .max_T_K = 500.0,
     .max_p_Pa = 50e6,
     .densest_kgm3 = 1750.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = bubble_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
-    .dew_pressure = &dew_p,
+    .saturation_pressure = bubble,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
+    .dew_pressure = dew,
 };
 
 }  // namespace lostwork

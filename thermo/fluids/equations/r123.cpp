@@ -56,7 +56,7 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     { 0.0003644103953544342, 5.0, 10, 2},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-11.11626316768202, -1.0},
     {1.9431754113618924, -2.0},
@@ -64,7 +64,7 @@ constexpr auto ideal = std::to_array<IdealPower>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.5307519, 1.0},
     { 2.6807309, 1.5},
     {-2.5862985, 2.0},
@@ -72,7 +72,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 10.648885, 7.5},
     { -9.829143, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     { -1.9138061,      0.25},
     {  6.6877655, 1.0 / 3.0},
     { -6.0421523,       0.5},
@@ -80,7 +80,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-0.26462756, 4.0 / 3.0},
     { 0.32297281,       3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.48827918, 1.0 / 3.0},
     { -6.7248571,       0.5},
     {  7.3123748, 2.0 / 3.0},
@@ -89,54 +89,38 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { -5.4561382,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 456.831 K, 3672 kPa and 550.0036 kg/m3.
-constexpr double critical_T_K = 456.8300258131298;
-constexpr double critical_p_Pa = 3661805.2694358146;
-constexpr double critical_rho_kgm3 = 550.0128948608069;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 follow from the IIR state alone.
 constexpr IdealPart ideal_part{.a1 = -13.232465921590089,
                                .a2 = 10.948063304347913,
                                .a_log_tau = 1.0460090000000002,
-                               .powers = ideal,
-                               .planck_einstein = {}};
+                               .powers = ideal};
 
 }  // namespace
 
 constinit const Fluid r123{
     .name = "R123",
-    .second_name = "",
     .composition = "2,2-dichloro-1,1,1-trifluoroethane CHCl2CF3 100 %",
-    .safety_class = "B1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "B1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Younglove and McLinden 1994, doi:10.1063/1.555950",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.152931,
     .gas_constant_JkgK = 8.31451 / 0.152931,
     .reducing_T_K = 456.831,
     .reducing_rho_kgm3 = 3596.417 * 0.152931,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 456.831 K, 3672 kPa and 550.0036 kg/m3.
+    .critical_T_K = 456.8300258131298,
+    .critical_p_Pa = 3661805.2694358146,
+    .critical_rho_kgm3 = 550.0128948608069,
     .min_T_K = 166.0,
     .max_T_K = 600.0,
     .max_p_Pa = 76e6,
     .densest_kgm3 = 2050.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

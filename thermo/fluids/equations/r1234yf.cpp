@@ -43,7 +43,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.5660196, 1.0},
     { 3.3121151, 1.5},
     {-5.6321025, 2.0},
@@ -51,7 +51,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-5.4950739, 3.5},
     {-1.7368645, 9.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.5784075, 1.0 / 3.0},
     { 20.671705,       0.5},
     {-36.719428, 2.0 / 3.0},
@@ -59,7 +59,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-69.698671, 4.0 / 3.0},
     { 39.496437,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     { 0.3844638, 1.0 / 3.0},
     { -10.77224,       0.5},
     { 13.008634, 2.0 / 3.0},
@@ -68,42 +68,29 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-5.4805622,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 367.85 K, 3384.4 kPa and 476.6939 kg/m3.
-constexpr double critical_T_K = 367.84999999994756;
-constexpr double critical_p_Pa = 3384373.695566112;
-constexpr double critical_rho_kgm3 = 476.69388799956585;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-12.08152554, 8.528962384), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = -12.081525543189045,
                                .a2 = 8.528962383650116,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
 
 constinit const Fluid r1234yf{
     .name = "R1234yf",
-    .second_name = "",
     .composition = "2,3,3,3-tetrafluoroprop-1-ene CF3CF=CH2 100 %",
-    .safety_class = "A2L (ASHRAE 34 / ISO 817)",
+    .safety_class = "A2L (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon and Akasaka 2022, doi:10.1007/s10765-022-03015-y",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.1140416,
     .gas_constant_JkgK = 8.314462618 / 0.1140416,
     .reducing_T_K = 367.85,
     .reducing_rho_kgm3 = 4180.0 * 0.1140416,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 367.85 K, 3384.4 kPa and 476.6939 kg/m3.
+    .critical_T_K = 367.84999999994756,
+    .critical_p_Pa = 3384373.695566112,
+    .critical_rho_kgm3 = 476.69388799956585,
     .min_T_K = 121.6,
     .max_T_K = 410.0,
     .max_p_Pa = 100e6,
@@ -111,11 +98,9 @@ constinit const Fluid r1234yf{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -42,7 +42,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     { -7.5473909, 1.0},
     {  2.6587976, 1.5},
     { -3.4390979, 2.0},
@@ -50,7 +50,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { -3.4310892, 3.5},
     {-0.86962452, 5.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-3.9031789,      0.25},
     { 16.719058, 1.0 / 3.0},
     {-42.159049,       0.5},
@@ -58,7 +58,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-64.601483, 5.0 / 6.0},
     { 22.434666,       1.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.7429857, 1.0 / 3.0},
     {-1.1693209,       0.5},
     {-3.3901387,       1.0},
@@ -67,54 +67,38 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-3.1794173,       4.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 351.255 K, 5782 kPa and 424 kg/m3.
-constexpr double critical_T_K = 351.25500044943203;
-constexpr double critical_p_Pa = 5782645.09394967;
-constexpr double critical_rho_kgm3 = 423.99996998830204;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-8.258096, 6.353098), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = -8.25809596345087,
                                .a2 = 6.353097759865384,
                                .a_log_tau = 3.004486,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
 
 constinit const Fluid r32{
     .name = "R32",
-    .second_name = "",
     .composition = "difluoromethane CH2F2 100 %",
-    .safety_class = "A2L (ASHRAE 34 / ISO 817)",
+    .safety_class = "A2L (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Tillner-Roth and Yokozeki 1997, doi:10.1063/1.556002",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.052024,
     .gas_constant_JkgK = 8.314471 / 0.052024,
     .reducing_T_K = 351.255,
     .reducing_rho_kgm3 = 8150.0846 * 0.052024,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 351.255 K, 5782 kPa and 424 kg/m3.
+    .critical_T_K = 351.25500044943203,
+    .critical_p_Pa = 5782645.09394967,
+    .critical_rho_kgm3 = 423.99996998830204,
     .min_T_K = 136.34,
     .max_T_K = 435.0,
     .max_p_Pa = 70e6,
     .densest_kgm3 = 1650.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

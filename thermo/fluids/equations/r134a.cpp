@@ -35,14 +35,14 @@ constexpr auto residual = std::to_array<HelmholtzTerm>({
     {-0.0001285458, 50.0, 10, 4},
 });
 
-constexpr auto ideal = std::to_array<IdealPower>({
+constexpr auto ideal = std::to_array<Power>({
   // n, t
     {-9.723916,  -0.5},
     { -3.92717, -0.75},
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.7277617, 1.0},
     { 2.5683012, 1.5},
     {-2.4525489, 2.0},
@@ -50,7 +50,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-2.5958123, 5.0},
     {0.99095697, 7.5},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {0.84662604, 1.0 / 3.0},
     { 7.1903601,       0.5},
     {-17.919166, 2.0 / 3.0},
@@ -58,7 +58,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-15.373193, 4.0 / 3.0},
     { 10.594094,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.9478594, 1.0 / 3.0},
     {-1.7051844, 2.0 / 3.0},
     {-2.3641867,       1.0},
@@ -67,48 +67,36 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-3.0790774,       5.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 374.21 K, 4059.28 kPa and 511.9 kg/m3.
-constexpr double critical_T_K = 374.2119665849513;
-constexpr double critical_p_Pa = 4059276.3737910655;
-constexpr double critical_rho_kgm3 = 511.9451132818318;
+// a1 and a2 as printed (-1.019535, 9.047135), carried to the digits that give the IIR state.
+constexpr IdealPart ideal_part{
+    .a1 = -1.0195345465006602, .a2 = 9.04713537629684, .a_log_tau = -1.629789, .powers = ideal};
 
 }  // namespace
 
 constinit const Fluid r134a{
     .name = "R134a",
-    .second_name = "",
     .composition = "1,1,1,2-tetrafluoroethane CF3CH2F 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Tillner-Roth and Baehr 1994, doi:10.1063/1.555958",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.102032,
     .gas_constant_JkgK = 8.314471 / 0.102032,
     .reducing_T_K = 374.18,
     .reducing_rho_kgm3 = 508.0,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 374.21 K, 4059.28 kPa and 511.9 kg/m3.
+    .critical_T_K = 374.2119665849513,
+    .critical_p_Pa = 4059276.3737910655,
+    .critical_rho_kgm3 = 511.9451132818318,
     .min_T_K = 169.85,
     .max_T_K = 455.0,
     .max_p_Pa = 70e6,
     .densest_kgm3 = 1900.0,
- // a1 and a2 as printed (-1.019535, 9.047135), carried to the digits that give the IIR state.
-    .ideal = {    .a1 = -1.0195345465006602,
-              .a2 = 9.04713537629684,
-              .a_log_tau = -1.629789,
-              .powers = ideal,
-              .planck_einstein = {}},
-    .residual = PowerTerms{                     residual     },
-     .gaussian = {  },
-  .associating = { },
- .non_analytic = {                      },
-    .saturation_pressure = { Ancillary::Form::exp_tau_sum,        critical_p_Pa, critical_T_K,
-              saturation_pressure     },
-    .saturated_liquid_rho = {Ancillary::Form::one_plus_sum,    critical_rho_kgm3, critical_T_K,
-              liquid_rho     },
-    .saturated_vapour_rho = { Ancillary::Form::exp_tau_sum,    critical_rho_kgm3, critical_T_K,
-              vapour_rho     },
+    .ideal = ideal_part,
+    .residual = PowerTerms{residual},
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

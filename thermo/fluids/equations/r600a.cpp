@@ -52,7 +52,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-6.8681837,  1.0},
     {  1.436384,  1.5},
     {  -1.53511,  2.5},
@@ -60,7 +60,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     { 2.8197827,  9.0},
     {-2.7784926, 12.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-2.0144917,      0.25},
     { 8.3470946, 1.0 / 3.0},
     {-15.019167,       0.5},
@@ -68,7 +68,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     {-11.065247, 5.0 / 6.0},
     { 1.3652739,       1.5},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.5787723, 1.0 / 3.0},
     {-1.1076638,       0.5},
     {-2.9796047,       1.0},
@@ -77,24 +77,10 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { 1.8103924,       5.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 407.81 K, 3629 kPa and 225.5 kg/m3.
-constexpr double critical_T_K = 407.8100000000046;
-constexpr double critical_p_Pa = 3629000.0166458976;
-constexpr double critical_rho_kgm3 = 225.49999999986377;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (11.60865546, -5.29450411), moved to the IIR state.
 constexpr IdealPart ideal_part{.a1 = -5.999509388699467,
                                .a2 = 5.0189458104439435,
                                .a_log_tau = 3.05956619,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
@@ -103,16 +89,18 @@ constinit const Fluid r600a{
     .name = "R600a",
     .second_name = "isobutane",
     .composition = "isobutane CH(CH3)3 100 %",
-    .safety_class = "A3 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A3 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Buecker and Wagner 2006, doi:10.1063/1.1901687",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.0581222,
     .gas_constant_JkgK = 8.314472 / 0.0581222,
     .reducing_T_K = 407.81,
     .reducing_rho_kgm3 = 3879.75678828 * 0.0581222,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 407.81 K, 3629 kPa and 225.5 kg/m3.
+    .critical_T_K = 407.8100000000046,
+    .critical_p_Pa = 3629000.0166458976,
+    .critical_rho_kgm3 = 225.49999999986377,
     .min_T_K = 113.73,
     .max_T_K = 575.0,
     .max_p_Pa = 35e6,
@@ -120,11 +108,9 @@ constinit const Fluid r600a{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

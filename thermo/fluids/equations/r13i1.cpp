@@ -32,7 +32,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-6.9772336, 1.0},
     { 2.4895011, 1.5},
     {-2.5332053, 2.0},
@@ -40,7 +40,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-9.8782064, 4.0},
     { 2.5992824, 5.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-0.56484323, 1.0 / 3.0},
     {  12.970656,       0.5},
     { -27.882264, 2.0 / 3.0},
@@ -48,7 +48,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -7.4421556, 4.0 / 3.0},
     {  2.4753408,       2.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-0.32466953, 1.0 / 3.0},
     { -5.6511185,       0.5},
     {  3.7211799, 2.0 / 3.0},
@@ -57,31 +57,16 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     { -6.6182288,       3.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 396.44 K, 3952.566072 kPa and 868.0006 kg/m3.
-constexpr double critical_T_K = 396.43969044596565;
-constexpr double critical_p_Pa = 3952544.561952289;
-constexpr double critical_rho_kgm3 = 867.9997444166675;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 follow from the IIR state alone.
 constexpr IdealPart ideal_part{.a1 = -24.691499784827855,
                                .a2 = 14.21752526281531,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
 
 constinit const Fluid r13i1{
     .name = "R13I1",
-    .second_name = "",
     .composition = "trifluoroiodomethane CF3I 100 %",
     .safety_class = "A1 (ASHRAE 34 / ISO 817, from memory)",
     .source = "Lemmon and Span 2015, doi:10.1021/acs.jced.5b00684",
@@ -90,21 +75,20 @@ constinit const Fluid r13i1{
     .gas_constant_JkgK = 8.3144621 / 0.1959104,
     .reducing_T_K = 396.44,
     .reducing_rho_kgm3 = 4430.6 * 0.1959104,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 396.44 K, 3952.566072 kPa and 868.0006 kg/m3.
+    .critical_T_K = 396.43969044596565,
+    .critical_p_Pa = 3952544.561952289,
+    .critical_rho_kgm3 = 867.9997444166675,
     .min_T_K = 120.0,
     .max_T_K = 420.0,
     .max_p_Pa = 50e6,
     .densest_kgm3 = 3150.0,
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
-    .gaussian = {},
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork

@@ -43,7 +43,7 @@ constexpr auto planck_einstein = std::to_array<PlanckEinstein>({
 });
 
 // First guesses only, fitted to this equation for this program.
-constexpr auto saturation_pressure = std::to_array<IdealPower>({
+constexpr auto saturation_pressure = std::to_array<Power>({
     {-7.8610764, 1.0},
     { 2.9776934, 1.5},
     {-4.5848626, 2.0},
@@ -51,7 +51,7 @@ constexpr auto saturation_pressure = std::to_array<IdealPower>({
     {-4.8275232, 3.5},
     {-1.0288178, 5.0},
 });
-constexpr auto liquid_rho = std::to_array<IdealPower>({
+constexpr auto liquid_rho = std::to_array<Power>({
     {-1.1570408,      0.25},
     { 4.4448164, 1.0 / 3.0},
     {-11.574334, 2.0 / 3.0},
@@ -59,7 +59,7 @@ constexpr auto liquid_rho = std::to_array<IdealPower>({
     { -17.80077,       1.0},
     { 3.7537267, 4.0 / 3.0},
 });
-constexpr auto vapour_rho = std::to_array<IdealPower>({
+constexpr auto vapour_rho = std::to_array<Power>({
     {-1.5725464, 1.0 / 3.0},
     {-1.8906703,       0.5},
     { 1.5967616,       1.0},
@@ -68,42 +68,29 @@ constexpr auto vapour_rho = std::to_array<IdealPower>({
     {-10.925537,       3.0},
 });
 
-// Of the equation itself, where the first two density derivatives of p vanish; the paper prints
-// 374.9 K, 2925.242234 kPa and 594.2509 kg/m3.
-constexpr double critical_T_K = 374.9001034452502;
-constexpr double critical_p_Pa = 2925248.665680182;
-constexpr double critical_rho_kgm3 = 594.2469253739447;
-
-constexpr Ancillary first_p{Ancillary::Form::exp_tau_sum, critical_p_Pa, critical_T_K,
-                            saturation_pressure};
-constexpr Ancillary first_liquid{Ancillary::Form::one_plus_sum, critical_rho_kgm3, critical_T_K,
-                                 liquid_rho};
-constexpr Ancillary first_vapour{Ancillary::Form::exp_tau_sum, critical_rho_kgm3, critical_T_K,
-                                 vapour_rho};
-
 // a1 and a2 as printed (-15.82911241, 11.087951), carried to the digits that give the IIR state.
 constexpr IdealPart ideal_part{.a1 = -15.829112413683866,
                                .a2 = 11.087950996215758,
                                .a_log_tau = 3.0,
-                               .powers = {},
                                .planck_einstein = planck_einstein};
 
 }  // namespace
 
 constinit const Fluid r227ea{
     .name = "R227ea",
-    .second_name = "",
     .composition = "1,1,1,2,3,3,3-heptafluoropropane CF3CHFCF3 100 %",
-    .safety_class = "A1 (ASHRAE 34 / ISO 817)",
+    .safety_class = "A1 (ASHRAE 34 / ISO 817, as listed after GB/T 7778-2017)",
     .source = "Lemmon and Span 2015, doi:10.1021/acs.jced.5b00684",
     .reference_state = "IIR",
     .molar_mass_kgmol = 0.17002886,
     .gas_constant_JkgK = 8.3144621 / 0.17002886,
     .reducing_T_K = 374.9,
     .reducing_rho_kgm3 = 3495.0 * 0.17002886,
-    .critical_T_K = critical_T_K,
-    .critical_p_Pa = critical_p_Pa,
-    .critical_rho_kgm3 = critical_rho_kgm3,
+    // Of the equation itself, where the first two density derivatives of p vanish; the paper prints
+    // 374.9 K, 2925.242234 kPa and 594.2509 kg/m3.
+    .critical_T_K = 374.9001034452502,
+    .critical_p_Pa = 2925248.665680182,
+    .critical_rho_kgm3 = 594.2469253739447,
     .min_T_K = 146.35,
     .max_T_K = 475.0,
     .max_p_Pa = 60e6,
@@ -111,11 +98,9 @@ constinit const Fluid r227ea{
     .ideal = ideal_part,
     .residual = PowerTerms{residual},
     .gaussian = gaussian,
-    .associating = {},
-    .non_analytic = {},
-    .saturation_pressure = first_p,
-    .saturated_liquid_rho = first_liquid,
-    .saturated_vapour_rho = first_vapour,
+    .saturation_pressure = saturation_pressure,
+    .saturated_liquid_rho = liquid_rho,
+    .saturated_vapour_rho = vapour_rho,
 };
 
 }  // namespace lostwork
