@@ -97,14 +97,23 @@ DeviceOptions device_options(const DeviceEntry& entry, const PlantFile& file, Pr
   return out;
 }
 
-ModelStream model_stream(const StreamEntry& entry) {
-  ModelStream out;
-  if (entry.rho_cp_J_m3K) {
-    out.fluid = ConstantStream{.rho_cp_SI = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0};
-  } else {
-    out.fluid = stream_named(entry.fluid).value_or(WaterStream{});
+ModelStream model_stream(const StreamEntry& entry, Problems& problems) {
+  if (entry.fluid && entry.rho_cp_J_m3K) {
+    refuse(problems, entry.place, "rho_cp_J_m3K", "not both: a fluid, or a heat capacity");
+    return {};
   }
-  return out;
+  if (entry.rho_cp_J_m3K) {
+    return {
+        .fluid = ConstantStream{.rho_cp_SI = *entry.rho_cp_J_m3K, .rho_kgm3 = 1000.0}
+    };
+  }
+  const auto fluid = stream_named(entry.fluid.value_or("water"));
+  if (!fluid) {
+    refuse(problems, entry.place, "fluid",
+           "\"water\", or a solution by mass like \"propylene glycol 30 %\": " + brine_names());
+    return {};
+  }
+  return {.fluid = *fluid};
 }
 
 std::string fluid_names() {
@@ -127,8 +136,8 @@ MachineConfig machine_config(const MachineEntry& entry, Problems& problems) {
   if (model.refrigerant == nullptr) {
     refuse(problems, entry.place, "refrigerant", fluid_names());
   }
-  model.cold = model_stream(entry.cold_stream);
-  model.hot = model_stream(entry.hot_stream);
+  model.cold = model_stream(entry.cold_stream, problems);
+  model.hot = model_stream(entry.hot_stream, problems);
   model.rated_power_W = entry.rated_power_kW * kilo;
   model.casing_loss = {.value = entry.casing_loss.fraction,
                        .u = entry.casing_loss.limit / std::sqrt(3.0)};

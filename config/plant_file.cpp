@@ -2,7 +2,6 @@
 
 #include "config/plant_keys.h"
 #include "config/toml_reader.h"
-#include "thermo/streams/stream.h"
 
 namespace lostwork {
 namespace {
@@ -101,18 +100,13 @@ StreamEntry take_stream(const TomlPlace& place, std::string_view key) {
       Key<StreamEntry>{ "rho_cp_J_m3K", &StreamEntry::rho_cp_J_m3K, "volumetric heat capacity",                                                       false, 1e5, 1e7},
   };
   if (const toml::table* table = node->as_table()) {
-    EntryPlace inner{.name = place.entry.name + '.' + std::string{key}};
-    const TomlPlace inside{*table, inner, place.problems};
-    out = read_by_keys<StreamEntry>(inside, stream_keys);
-    const toml::node* fluid = node_of(*table, "fluid");
-    if (fluid != nullptr && inner.sound("fluid") && !stream_named(out.fluid)) {
-      inside.refuse(
-          *fluid, "fluid",
-          "\"water\", or a solution by mass like \"propylene glycol 30 %\": " + brine_names());
-    }
+    EntryPlace inner{.line = table->source().begin.line,
+                     .name = place.entry.name + '.' + std::string{key}};
+    out = read_by_keys<StreamEntry>({*table, inner, place.problems}, stream_keys);
+    out.place = std::move(inner);
     return out;
   }
-  place.refuse(*node, key, "{ fluid = \"water\" } or { rho_cp_J_m3K = 4.18e6 }");
+  place.refuse(*node, key, std::string{keys::stream_form});
   return out;
 }
 

@@ -61,7 +61,8 @@ struct DeviceEntry {
 
 // A liquid as the file names it, or its constant volumetric heat capacity.
 struct StreamEntry {
-  std::string fluid = "water";
+  EntryPlace place;
+  std::optional<std::string> fluid;  // neither: water
   std::optional<double> rho_cp_J_m3K;
 };
 

@@ -77,6 +77,9 @@ inline constexpr std::array device{
                      120},
 };
 
+inline constexpr std::string_view stream_form =
+    R"({ fluid = "water" }, { fluid = "propylene glycol 30 %" } or { rho_cp_J_m3K = 4.18e6 })";
+
 inline constexpr std::array machine{
     Key<MachineEntry>{                      "id",                       &MachineEntry::id,"a name for files and addresses",true},
     Key<MachineEntry>{                    "name",                     &MachineEntry::name,              "as people call it",  true},
@@ -96,12 +99,8 @@ inline constexpr std::array machine{
                       "temperature around the casing", false, -50, 70},
     Key<MachineEntry>{                  "accept",                   &MachineEntry::accept,
                       "take what is learned as healthy without a person", false, 0, 0, acceptances},
-    Key<MachineEntry>{             "cold_stream",                                 Other{},
-                      "{ fluid = \"water\" }, { fluid = \"propylene glycol 30 %\" } or { "
-                      "rho_cp_J_m3K = 4.18e6 }"      },
-    Key<MachineEntry>{              "hot_stream",                                 Other{},
-                      "{ fluid = \"water\" }, { fluid = \"propylene glycol 30 %\" } or { "
-                      "rho_cp_J_m3K = 4.18e6 }"      },
+    Key<MachineEntry>{             "cold_stream",                                 Other{},                      stream_form      },
+    Key<MachineEntry>{              "hot_stream",                                 Other{},                      stream_form      },
 };
 
 inline constexpr std::array pair{
