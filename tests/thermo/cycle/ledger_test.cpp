@@ -149,16 +149,43 @@ Cycle random_cycle(unsigned seed, Duty duty) {
   return cycle;
 }
 
+// The same with another refrigerant, between brines; cool enough to condense R410A, with a liquid
+// that is one beyond the glide of R407C.
+Cycle random_cycle(unsigned seed, Duty duty, std::string_view refrigerant) {
+  Cycle cycle = random_cycle(seed, duty);
+  if (refrigerant == cycle.refrigerant) {
+    return cycle;
+  }
+  cycle.refrigerant = refrigerant;
+  cycle.cold_fluid = stream_named("propylene glycol 30 %").value();
+  cycle.hot_fluid = stream_named("ethylene glycol 20 %").value();
+  const double less_K = 0.5 * (cycle.hot_in_T_K - cycle.cold_in_T_K);
+  cycle.hot_in_T_K -= less_K;
+  cycle.hot_out_T_K -= less_K;
+  cycle.condensing_T_K -= less_K;
+  cycle.subcooling_K += 8.0;
+  return cycle;
+}
+
 struct Case {
   unsigned seed;
   Duty duty;
   bool casing_known;  // the temperature of its surroundings is
+  std::string_view refrigerant = "R134a";
 };
 
 std::vector<Case> cases() {
   std::vector<Case> all;
   for (unsigned seed = 1; seed <= 60; ++seed) {
     all.push_back({seed, seed % 4 < 2 ? Duty::cooling : Duty::heating, seed % 5 != 0});
+  }
+  for (const std::string_view refrigerant :
+       {"R1234yf", "R1234ze(E)", "R32", "R22", "R245fa", "R1233zd(E)", "R290", "R600a", "R717",
+        "R410A", "R407C", "R404A", "R507A"}) {
+    all.push_back({.seed = all.back().seed + 1,
+                   .duty = all.back().duty == Duty::cooling ? Duty::heating : Duty::cooling,
+                   .casing_known = true,
+                   .refrigerant = refrigerant});
   }
   return all;
 }
@@ -195,7 +222,8 @@ class AnyMachine : public testing::TestWithParam<Case> {
   }
   [[nodiscard]] double around_T_K() const { return machine.model.casing_T_K.value_or(T0_K()); }
 
-  TestMachine machine = make_machine(random_cycle(GetParam().seed, GetParam().duty));
+  TestMachine machine =
+      make_machine(random_cycle(GetParam().seed, GetParam().duty, GetParam().refrigerant));
 };
 
 INSTANTIATE_TEST_SUITE_P(Seeded, AnyMachine, testing::ValuesIn(cases()), [](const auto& param) {

@@ -125,7 +125,7 @@ TestMachine make_machine(const Cycle& cycle, const Accuracy& accuracy) {
   model.id = "chiller-1";
   model.name = "Chiller 1";
   model.duty = cycle.duty;
-  model.refrigerant = fluid_named("R134a");
+  model.refrigerant = fluid_named(cycle.refrigerant);
   model.cold.fluid = cycle.cold_fluid;
   model.hot.fluid = cycle.hot_fluid;
   machine.truth = truth_of(*model.refrigerant, cycle);

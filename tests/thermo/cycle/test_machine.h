@@ -9,12 +9,14 @@
 
 #include <cstddef>
 #include <map>
+#include <string_view>
 #include <vector>
 
 namespace lostwork::test {
 
 // The cycle as its designer would state it.
 struct Cycle {
+  std::string_view refrigerant = "R134a";
   Duty duty = Duty::cooling;
   StreamFluid cold_fluid = ConstantStream{};
   StreamFluid hot_fluid = ConstantStream{};
