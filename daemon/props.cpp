@@ -131,6 +131,22 @@ void write_list(std::ostream& out) {
   }
 }
 
+// As many values as names; the error names the one that is no finite number.
+template <std::size_t count>
+tl::expected<std::array<double, count>, std::string> finite_values(
+    const std::vector<std::string_view>& given, const std::array<std::string_view, count>& names) {
+  std::array<double, count> out{};
+  for (std::size_t i = 0; i < count; ++i) {
+    const auto value = finite_number(given[i]);
+    if (!value) {
+      return tl::unexpected{std::string{names[i]} + " = \"" + std::string{given[i]} +
+                            "\": allowed is a finite number"};
+    }
+    out[i] = *value;
+  }
+  return out;
+}
+
 struct SaturationRange {  // degC
   double from;
   double to;
@@ -172,16 +188,12 @@ tl::expected<SaturationRange, std::string> saturation_range(const Arguments& arg
     return tl::unexpected{std::to_string(arguments.values.size()) + " values; " +
                           std::string{form}};
   }
-  std::array<double, 3> given{};
-  for (std::size_t i = 0; i < given.size(); ++i) {
-    const auto value = finite_number(arguments.values[i]);
-    if (!value) {
-      return tl::unexpected{std::string{arguments.values[i]} + ": not a finite number; " +
-                            std::string{form}};
-    }
-    given[i] = *value;
+  constexpr std::array<std::string_view, 3> names{"FROM", "TO", "STEP"};
+  const auto given = finite_values(arguments.values, names);
+  if (!given) {
+    return tl::unexpected{given.error()};
   }
-  const auto [from, to, step] = given;
+  const auto [from, to, step] = *given;
   constexpr double most_rows = 1e5;
   if (!(to >= from && step >= 1e-3 && (to - from) / step < most_rows)) {
     return tl::unexpected{digits(from) + ' ' + digits(to) + ' ' + digits(step) + ": " +
@@ -218,16 +230,9 @@ tl::expected<std::vector<Point>, std::string> points_of(const Arguments& argumen
     return tl::unexpected{std::to_string(arguments.values.size()) + " values; --given " +
                           std::string{pair.name} + " needs two values, or --input FILE"};
   }
-  Point point{};
-  for (std::size_t i = 0; i < point.size(); ++i) {
-    const auto value = finite_number(arguments.values[i]);
-    if (!value) {
-      return tl::unexpected{std::string{pair.columns[i]} + " = \"" +
-                            std::string{arguments.values[i]} + "\": allowed is a finite number"};
-    }
-    point[i] = *value;
-  }
-  return std::vector{point};
+  return finite_values(arguments.values, pair.columns).map([](const Point& point) {
+    return std::vector{point};
+  });
 }
 
 tl::unexpected<std::string> missing(std::string_view option) {
@@ -265,6 +270,12 @@ tl::expected<Question, std::string> question_of(const Arguments& arguments, cons
 
 int answer_saturation(const Arguments& arguments, const Fluid& fluid, std::ostream& out,
                       std::ostream& err) {
+  for (const std::string_view other : {"--given", "--input"}) {
+    if (arguments.has(other)) {
+      err << "lostwork props: " << other << ": not expected beside --saturation\n";
+      return 2;
+    }
+  }
   const auto range = saturation_range(arguments);
   if (!range) {
     err << "lostwork props: " << range.error() << '\n';

@@ -285,10 +285,12 @@ TEST(Props, RefusesASaturationTableWithoutAnEnd) {
   for (const std::string_view step : {"0", "-1", "1e-9", "nan", "x"}) {
     const Outcome outcome = props({"--fluid", "R134a", "--saturation", "0", "20", step});
     EXPECT_EQ(outcome.code, 2) << step;
-    EXPECT_THAT(outcome.err, HasSubstr("FROM TO STEP")) << step;
+    EXPECT_THAT(outcome.err, HasSubstr("STEP")) << step;
   }
   EXPECT_EQ(props({"--fluid", "R134a", "--saturation", "20", "0", "1"}).code, 2);
   EXPECT_EQ(props({"--fluid", "R134a", "--saturation", "0", "20"}).code, 2);
+  EXPECT_THAT(props({"--fluid", "R134a", "--given", "T,x", "--saturation", "0", "20", "5"}).err,
+              HasSubstr("--given: not expected beside --saturation"));
 }
 
 TEST(Props, ListsEveryFluidWithItsSource) {
