@@ -110,7 +110,7 @@ ModelStream model_stream(const StreamEntry& entry, Problems& problems) {
   const auto fluid = stream_named(entry.fluid.value_or("water"));
   if (!fluid) {
     refuse(problems, entry.place, "fluid",
-           "\"water\", or a solution by mass like \"propylene glycol 30 %\": " + brine_names());
+           R"("water", or a solution by mass like "propylene glycol 30 %": )" + brine_names());
     return {};
   }
   return {.fluid = *fluid};

@@ -103,6 +103,22 @@ void Isotherm::set_ideal_part() {
   }
 }
 
+// n tau^t is given. Where exp(-tau^m) comes to it, the logarithmic derivative is t - m tau^m.
+void Isotherm::add_row(const PowerTerms::Row& row, double value, Coefficient& sum) const {
+  if (row.m == 0.0) {
+    sum.c += value;
+    sum.ct += value * row.t;
+    sum.ctt += value * row.t * (row.t - 1.0);
+    return;
+  }
+  const double tau_m = power(log_tau_, row.m);
+  const double decayed = value * std::exp(-tau_m);
+  const double first = row.t - row.m * tau_m;
+  sum.c += decayed;
+  sum.ct += decayed * first;
+  sum.ctt += decayed * (first * (first - 1.0) - row.m * row.m * tau_m);
+}
+
 void Isotherm::set_groups() {
   const PowerTerms& terms = fluid_->residual;
   std::array<double, PowerTerms::capacity> powers;  // NOLINT(*-init-variables): filled below
@@ -119,18 +135,7 @@ void Isotherm::set_groups() {
     Coefficient sum{0.0, 0.0, 0.0};
     for (std::size_t i = group.begin; i < group.end; ++i) {
       const PowerTerms::Row& row = terms.rows()[i];
-      double value = row.n * powers[row.power];
-      double first = row.t;  // tau f' / f
-      double bend = 0.0;     // of the decay: m^2 tau^m
-      if (row.m > 0.0) {
-        const double tau_m = power(log_tau_, row.m);
-        value *= std::exp(-tau_m);
-        first -= row.m * tau_m;
-        bend = row.m * row.m * tau_m;
-      }
-      sum.c += value;
-      sum.ct += value * first;
-      sum.ctt += value * (first * (first - 1.0) - bend);
+      add_row(row, row.n * powers[row.power], sum);
     }
     groups_[count++] = sum;
   }

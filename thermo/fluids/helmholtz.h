@@ -65,6 +65,7 @@ class Isotherm {
     double ctt;         // tau^2 f''
   };
   void set_ideal_part();
+  void add_row(const PowerTerms::Row& row, double value, Coefficient& sum) const;
   void set_groups();
   template <bool with_tau>
   [[nodiscard]] Reduced before_decay(const PowerTerms::Decay& decay,

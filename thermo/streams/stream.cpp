@@ -126,27 +126,33 @@ Result<StreamState> state_of(const ConstantStream& stream, double T_K) {
                      .expansion_beta = 0.0};
 }
 
+// Of a cubic in T: itself, its derivative, its integral, and the integral of it over T.
+double value(const Brine::Cubic& c, double T_K) {
+  return c[0] + T_K * (c[1] + T_K * (c[2] + T_K * c[3]));
+}
+double slope(const Brine::Cubic& c, double T_K) {
+  return c[1] + T_K * (2.0 * c[2] + T_K * 3.0 * c[3]);
+}
+double integral(const Brine::Cubic& c, double T_K) {
+  return T_K * (c[0] + T_K * (c[1] / 2.0 + T_K * (c[2] / 3.0 + T_K * c[3] / 4.0)));
+}
+double integral_over_T(const Brine::Cubic& c, double T_K) {
+  return c[0] * std::log(T_K) + T_K * (c[1] + T_K * (c[2] / 2.0 + T_K * c[3] / 3.0));
+}
+
 Result<StreamState> state_of(const Brine& brine, double T_K) {
   if (T_K < brine.freezing_T_K || T_K > brine.max_T_K) {
     return Refusal{
         Reason{ReasonCode::outside_fluid, "temperature", T_K}
     };
   }
-  // h and s are the integrals of cp and cp / T, from the ice point.
-  const auto& [c0, c1, c2, c3] = brine.cp_JkgK;
-  const auto h = [&](double T) {
-    return T * (c0 + T * (c1 / 2.0 + T * (c2 / 3.0 + T * c3 / 4.0)));
-  };
-  const auto s = [&](double T) {
-    return c0 * std::log(T) + T * (c1 + T * (c2 / 2.0 + T * c3 / 3.0));
-  };
-  const auto& [r0, r1, r2, r3] = brine.rho_kgm3;
-  const double rho = r0 + T_K * (r1 + T_K * (r2 + T_K * r3));
-  return StreamState{.rho_kgm3 = rho,
-                     .h_Jkg = h(T_K) - h(ice_point_T_K),
-                     .s_JkgK = s(T_K) - s(ice_point_T_K),
-                     .cp_JkgK = c0 + T_K * (c1 + T_K * (c2 + T_K * c3)),
-                     .expansion_beta = -(r1 + T_K * (2.0 * r2 + 3.0 * T_K * r3)) / rho};
+  const double rho_kgm3 = value(brine.rho_kgm3, T_K);
+  return StreamState{
+      .rho_kgm3 = rho_kgm3,
+      .h_Jkg = integral(brine.cp_JkgK, T_K) - integral(brine.cp_JkgK, ice_point_T_K),
+      .s_JkgK = integral_over_T(brine.cp_JkgK, T_K) - integral_over_T(brine.cp_JkgK, ice_point_T_K),
+      .cp_JkgK = value(brine.cp_JkgK, T_K),
+      .expansion_beta = -slope(brine.rho_kgm3, T_K) / rho_kgm3};
 }
 
 }  // namespace
